@@ -1,0 +1,1 @@
+//! Diagnostics as a person sees them: the only file that knows ariadne.

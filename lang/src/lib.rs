@@ -1,0 +1,19 @@
+//! The zij language.
+//!
+//! ```text
+//!  text --lexer--> tokens --parser--> Ast --checker--> Program --evaluator--> values
+//!  source          token              ast   check      program   eval         report
+//!                                            |
+//!                                   the library's catalogue
+//! ```
+//!
+//! Lexer, parser and checker return what they understood together with every
+//! diagnostic; only evaluation can fail outright. The checker is the one
+//! bridge from the tree to the program: dimensions end there.
+
+pub mod ast;
+pub mod diagnostic;
+pub mod program;
+pub mod report;
+pub mod session;
+pub mod source;

@@ -1,0 +1,3 @@
+//! The `zij` program.
+
+fn main() {}

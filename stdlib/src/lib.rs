@@ -1,0 +1,11 @@
+//! What zij knows of physics: units, constants, cosmological models, and the
+//! distances, times and horizons computed from them.
+//!
+//! Nothing here knows the syntax of the language. `lang` reads the
+//! [`catalogue`], which describes every name, and calls the functions in it.
+
+pub mod catalogue;
+pub mod constants;
+pub mod dimension;
+pub mod model;
+pub mod units;
