@@ -2,5 +2,7 @@
 
 use crate::catalogue::Entry;
 
+pub mod values;
+
 /// The entries of this chapter.
 pub static ENTRIES: &[Entry] = &[];
