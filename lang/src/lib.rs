@@ -12,7 +12,9 @@
 //! bridge from the tree to the program: dimensions end there.
 
 pub mod ast;
+pub mod cli;
 pub mod diagnostic;
+pub mod output;
 pub mod program;
 pub mod report;
 pub mod session;

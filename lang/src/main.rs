@@ -1,3 +1,5 @@
 //! The `zij` program.
 
-fn main() {}
+fn main() -> std::process::ExitCode {
+    zij_lang::cli::main()
+}

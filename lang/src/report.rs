@@ -54,7 +54,7 @@ pub struct Shown {
 }
 
 /// The numbers of a value.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, Default, PartialEq)]
 pub enum Numbers {
     /// One number.
     Scalar(f64),
@@ -67,13 +67,8 @@ pub enum Numbers {
     /// A time or a signal that never comes.
     Never,
     /// Not computed: a diagnostic says why.
+    #[default]
     Missing,
-}
-
-impl Default for Numbers {
-    fn default() -> Self {
-        Numbers::Missing
-    }
 }
 
 /// The frame of a value.
@@ -146,6 +141,23 @@ pub struct TableColumn {
     pub about: Option<String>,
     /// The values; NaN only where a diagnostic says why.
     pub values: Vec<f64>,
+}
+
+impl TableReport {
+    /// How many rows it has.
+    #[must_use]
+    pub fn rows(&self) -> usize {
+        let lengths = self.columns.iter().map(|column| column.values.len());
+        lengths.max().unwrap_or(0)
+    }
+
+    /// The values of a row.
+    pub fn row(&self, row: usize) -> impl Iterator<Item = f64> + '_ {
+        let value = move |column: &TableColumn| column.values.get(row).copied();
+        self.columns
+            .iter()
+            .map(move |column| value(column).unwrap_or(f64::NAN))
+    }
 }
 
 impl Report {
