@@ -15,6 +15,7 @@ pub mod ast;
 pub mod cli;
 pub mod diagnostic;
 pub mod output;
+pub mod eval;
 pub mod program;
 pub mod report;
 pub mod session;

@@ -42,7 +42,7 @@ pub struct Program {
 }
 
 /// A graph of nodes in evaluation order.
-#[derive(Default)]
+#[derive(Clone, Default)]
 pub struct Block {
     /// The nodes.
     pub nodes: Vec<Node>,
@@ -53,6 +53,7 @@ pub struct Block {
 }
 
 /// One value.
+#[derive(Clone)]
 pub struct Node {
     /// How it is computed.
     pub op: Op,
@@ -192,4 +193,44 @@ pub struct ModelNode {
     pub settings: Vec<(ParameterId, NodeId)>,
     /// `w(z)`: parameter, body with z as input 0, captures.
     pub function: Option<(ParameterId, BlockId, Vec<NodeId>)>,
+}
+
+impl Op {
+    /// Calls `visit` with every node this one is computed from, in order.
+    pub fn operands(&self, mut visit: impl FnMut(NodeId)) {
+        match self {
+            Op::Constant(_) | Op::List(_) | Op::Input(_) | Op::Column(_) => {}
+            Op::Gather(nodes) | Op::Reduce(_, nodes) => nodes.iter().copied().for_each(visit),
+            Op::Range(from, to, step) => [*from, *to, step.node()].into_iter().for_each(visit),
+            Op::Negate(a) | Op::Not(a) | Op::PowerInteger(a, _) | Op::Sort(a) => visit(*a),
+            Op::Binary(_, a, b) | Op::Compare(_, a, b) | Op::Logical(_, a, b) | Op::Filter(a, b) => {
+                [*a, *b].into_iter().for_each(visit);
+            }
+            Op::Select(condition, yes, no) => [*condition, *yes, *no].into_iter().for_each(visit),
+            Op::Call(_, model, arguments) => model.iter().chain(arguments).copied().for_each(visit),
+            Op::Bind(bind) => {
+                [bind.from, bind.to].into_iter().for_each(&mut visit);
+                bind.captures.iter().copied().for_each(visit);
+            }
+            Op::Model(model) => {
+                model.settings.iter().for_each(|(_, node)| visit(*node));
+                if let Some((_, _, captures)) = &model.function {
+                    captures.iter().copied().for_each(visit);
+                }
+            }
+        }
+    }
+}
+
+impl RangeStep {
+    /// The node that holds the step or the number of steps.
+    #[must_use]
+    pub fn node(self) -> NodeId {
+        match self {
+            RangeStep::Every(node)
+            | RangeStep::EveryDex(node)
+            | RangeStep::Steps(node)
+            | RangeStep::LogSteps(node) => node,
+        }
+    }
 }
