@@ -21,6 +21,9 @@ pub struct Statement {
 }
 
 /// The kinds of statement.
+// A definition is the largest of them and also the usual one: a box would
+// cost an allocation for each and save nothing.
+#[allow(clippy::large_enum_variant)]
 #[derive(Clone, Debug, PartialEq)]
 pub enum StatementKind {
     /// `assume planck2018`
