@@ -81,8 +81,12 @@ pub const BOHR_MAGNETON_UNCERTAINTY: f64 = 2.9e-33;
 pub const ASTRONOMICAL_UNIT: f64 = 149_597_870_700.0;
 /// Parsec, 648000/π au, m. Exact, rounded once: IAU 2015 Resolution B2, note 4.
 pub const PARSEC: f64 = 3.085_677_581_491_367e16;
-/// Megaparsec, m: [`PARSEC`] rounded once after the factor of 10⁶.
-pub const MEGAPARSEC: f64 = 3.085_677_581_491_367_3e22;
+/// Kiloparsec, m, rounded once.
+pub const KILOPARSEC: f64 = 3.085_677_581_491_367e19;
+/// Megaparsec, m, rounded once.
+pub const MEGAPARSEC: f64 = 3.085_677_581_491_367e22;
+/// Gigaparsec, m, rounded once.
+pub const GIGAPARSEC: f64 = 3.085_677_581_491_367_3e25;
 /// Day of 86 400 s.
 pub const DAY: f64 = 86_400.0;
 /// Julian year of 365.25 days, s. Exact: IAU Style Manual (1989), table 5.
