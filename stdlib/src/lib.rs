@@ -9,3 +9,4 @@ pub mod constants;
 pub mod dimension;
 pub mod model;
 pub mod units;
+pub mod words;
