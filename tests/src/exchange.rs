@@ -1,0 +1,98 @@
+//! Golden sessions: what a user types at the prompt and what is answered.
+//!
+//! ```text
+//! planck2018 ∴ 1 pc [m]
+//! 3.0857e16 m
+//! ```
+//!
+//! Lines with the sign `∴` are entries, and those that start with `  … ` go
+//! on with one; the rest is the answer. A golden file guards appearance, never
+//! a physical number. `UPDATE=1` writes the answers anew: read every line that
+//! changes.
+
+use crate::{repository, subject};
+use std::fmt::Write;
+use std::fs;
+
+const SIGN: &str = " ∴ ";
+const MORE: &str = "  … ";
+
+/// Replays every file of `tests/sessions`.
+///
+/// # Panics
+/// If an answer differs, or there is no session.
+pub fn check_sessions() {
+    let paths = repository::files("tests/sessions", "txt");
+    assert!(!paths.is_empty(), "no sessions");
+    let update = std::env::var_os("UPDATE").is_some();
+    let mut failures = String::new();
+    for path in &paths {
+        let recorded = repository::read(path);
+        let replayed = replay(&recorded);
+        if recorded == replayed {
+            continue;
+        }
+        if update {
+            fs::write(path, &replayed).unwrap_or_else(|error| panic!("{}: {error}", path.display()));
+            continue;
+        }
+        let _ = write!(
+            failures,
+            "\n==== {}\n{}",
+            repository::relative(path),
+            difference(&recorded, &replayed)
+        );
+    }
+    assert!(
+        failures.is_empty(),
+        "sessions differ (UPDATE=1 writes them anew){failures}"
+    );
+}
+
+/// The session with the answers given now.
+#[must_use]
+pub fn replay(recorded: &str) -> String {
+    let mut talk = subject::Talk::default();
+    let mut text = String::new();
+    for comment in recorded.lines().take_while(|line| !line.contains(SIGN)) {
+        let _ = writeln!(text, "{comment}");
+    }
+    for entry in entries(recorded) {
+        let shown = entry.replace('\n', &format!("\n{MORE}"));
+        let _ = writeln!(text, "{}{shown}", talk.prompt());
+        text.push_str(&talk.enter(&entry));
+    }
+    text
+}
+
+fn entries(recorded: &str) -> Vec<String> {
+    let mut entries: Vec<String> = Vec::new();
+    for line in recorded.lines() {
+        if let Some((_, entry)) = line.split_once(SIGN) {
+            entries.push(entry.into());
+        } else if let (Some(entry), Some(more)) = (entries.last_mut(), line.strip_prefix(MORE)) {
+            let _ = write!(entry, "\n{more}");
+        }
+    }
+    entries
+}
+
+/// The first lines in which two texts differ.
+fn difference(recorded: &str, replayed: &str) -> String {
+    let mut text = String::new();
+    let (mut old, mut new) = (recorded.lines(), replayed.lines());
+    loop {
+        match (old.next(), new.next()) {
+            (None, None) => return text,
+            (one, other) if one == other => {}
+            (one, other) => {
+                let _ = writeln!(
+                    text,
+                    "- {}\n+ {}",
+                    one.unwrap_or("(end)"),
+                    other.unwrap_or("(end)")
+                );
+            }
+        }
+    }
+}

@@ -1,0 +1,1 @@
+//! Long sheets for measuring speed.

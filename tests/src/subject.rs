@@ -1,0 +1,216 @@
+//! What is tested: the only place of the suites that calls the crates.
+
+use std::path::Path;
+use zij_lang::ast::{Statement, StatementKind};
+use zij_lang::cli::SheetFolder;
+use zij_lang::diagnostic::{Diagnostic, render};
+use zij_lang::output::{Look, text};
+use zij_lang::report::{Frame, Item, Numbers, Report, Shown};
+use zij_lang::session::{Files, Hint, NoFiles, Session};
+use zij_lang::source::{Source, Span};
+use zij_lang::{parser, print};
+
+/// A sheet that is run without any file.
+#[must_use]
+pub fn run(text: &str) -> Report {
+    Session::new(Box::new(NoFiles)).run(&Source::new("sheet", text))
+}
+
+/// A sheet that is checked only.
+#[must_use]
+pub fn check_only(text: &str) -> Report {
+    Session::new(Box::new(NoFiles)).check(&Source::new("sheet", text))
+}
+
+/// A sheet of the repository, run with the files of its own folder.
+#[must_use]
+pub fn run_at(path: &Path, text: &str) -> Report {
+    let files = Box::new(SheetFolder::of(path));
+    Session::new(files).run(&Source::new("sheet", text))
+}
+
+/// A sheet run with some `NAME=VALUE`.
+///
+/// # Errors
+/// The sentence with which an assignment is refused.
+pub fn run_given(text: &str, givens: &[&str]) -> Result<Report, String> {
+    let mut session = Session::new(Box::new(NoFiles));
+    for given in givens {
+        session.give(given)?;
+    }
+    Ok(session.run(&Source::new("sheet", text)))
+}
+
+/// Files that exist for one test.
+pub struct Folder(pub Vec<(&'static str, &'static str)>);
+
+impl Files for Folder {
+    fn read(&self, path: &str) -> Result<Vec<u8>, String> {
+        let found = self.0.iter().find(|(name, _)| *name == path);
+        found
+            .map(|(_, text)| text.as_bytes().to_vec())
+            .ok_or_else(|| format!("{path}: no such file"))
+    }
+}
+
+/// A sheet run with files that exist for this test.
+#[must_use]
+pub fn run_with(files: Folder, text: &str) -> Report {
+    Session::new(Box::new(files)).run(&Source::new("sheet", text))
+}
+
+/// What is wrong with the form of a text, before any meaning.
+#[must_use]
+pub fn form(text: &str) -> Vec<Diagnostic> {
+    parser::parse(text).diagnostics
+}
+
+/// The statements of a text.
+#[must_use]
+pub fn statements(text: &str) -> Vec<Statement> {
+    parser::parse(text).statements
+}
+
+/// The statements printed again.
+#[must_use]
+pub fn printed(statements: &[Statement]) -> String {
+    print::sheet(statements)
+}
+
+/// The diagnostics of the sheet itself; those of other sources are none of its.
+#[must_use]
+pub fn own_diagnostics(report: &Report) -> Vec<Diagnostic> {
+    let own = report.diagnostics.iter().filter(|(source, _)| *source == 0);
+    own.map(|(_, diagnostic)| diagnostic.clone()).collect()
+}
+
+/// The places of the statements that show something, in order; `report.items`
+/// has one entry for each.
+#[must_use]
+pub fn showing(text: &str) -> Vec<Span> {
+    let shows = |statement: &Statement| match statement.kind {
+        StatementKind::Result(_)
+        | StatementKind::ResultOf(..)
+        | StatementKind::Claim(..)
+        | StatementKind::Table(_)
+        | StatementKind::Explain(_)
+        | StatementKind::Help(_)
+        | StatementKind::Expression(..) => true,
+        StatementKind::Assume(_)
+        | StatementKind::Model(..)
+        | StatementKind::Given(_)
+        | StatementKind::Value(_)
+        | StatementKind::Function(..)
+        | StatementKind::Figure(_)
+        | StatementKind::Read(_)
+        | StatementKind::Include(_)
+        | StatementKind::Unit(..)
+        | StatementKind::Tally(_)
+        | StatementKind::Correlate(..)
+        | StatementKind::Broken => false,
+    };
+    let statements = statements(text);
+    statements
+        .iter()
+        .filter(|one| shows(one))
+        .map(|one| one.span)
+        .collect()
+}
+
+/// What is known of a shown thing in a few words: `a length (comoving)`,
+/// `agrees`, `disagrees`.
+#[must_use]
+pub fn words(item: &Item) -> String {
+    match item {
+        Item::Result(shown) | Item::Printed(shown) => dimension_words(shown),
+        Item::Claim(claim) => match claim.agrees {
+            Some(true) => "agrees".into(),
+            Some(false) => "disagrees".into(),
+            None => "no verdict".into(),
+        },
+        Item::Table(table) => format!("{} rows", table.rows()),
+        Item::Text(_) => "text".into(),
+    }
+}
+
+fn dimension_words(shown: &Shown) -> String {
+    if shown.dimension.contains('(') {
+        return shown.dimension.clone();
+    }
+    match shown.frame {
+        Frame::Proper => shown.dimension.clone(),
+        Frame::Comoving => format!("{} (comoving)", shown.dimension),
+        Frame::Mixed => format!("{} (mixed frame)", shown.dimension),
+    }
+}
+
+/// The number a sheet ends on: its last result or printed value.
+#[must_use]
+pub fn last_number(report: &Report) -> Option<f64> {
+    let shown = report.items.iter().rev().find_map(|item| match item {
+        Item::Result(shown) | Item::Printed(shown) => Some(shown),
+        Item::Claim(_) | Item::Table(_) | Item::Text(_) => None,
+    })?;
+    match shown.value {
+        Numbers::Scalar(number) => Some(number),
+        Numbers::Series(_) | Numbers::Truth(_) | Numbers::Truths(_) | Numbers::Never | Numbers::Missing => {
+            None
+        }
+    }
+}
+
+/// The claims of a report that do not agree, each in a line.
+#[must_use]
+pub fn unmet_claims(report: &Report) -> Vec<String> {
+    let unmet = report.items.iter().filter_map(|item| match item {
+        Item::Claim(claim) if claim.agrees != Some(true) => Some(format!(
+            "{}: computed {:?} {}",
+            claim.source, claim.computed, claim.unit
+        )),
+        Item::Claim(_) | Item::Result(_) | Item::Printed(_) | Item::Table(_) | Item::Text(_) => None,
+    });
+    unmet.collect()
+}
+
+/// Everything said of a sheet, as text for a failing test.
+#[must_use]
+pub fn said(report: &Report) -> String {
+    let diagnostics = render::render(&report.diagnostics, &report.sources, &Look::PLAIN);
+    format!("{diagnostics}{}", text::render(report, &Look::PLAIN))
+}
+
+/// The dimension of an expression after some statements, in words.
+#[must_use]
+pub fn dimension(before: &str, expression: &str) -> String {
+    let mut session = Session::new(Box::new(NoFiles));
+    let _ = session.enter(&Source::new("before", before));
+    match session.hint(expression) {
+        Hint::Dimension(words) => words,
+        Hint::Wrong(why) => format!("wrong: {why}"),
+        Hint::Nothing => "nothing".into(),
+    }
+}
+
+/// A talk at the prompt.
+pub struct Talk(Session);
+
+impl Default for Talk {
+    fn default() -> Talk {
+        Talk(Session::new(Box::new(NoFiles)))
+    }
+}
+
+impl Talk {
+    /// One entry, and what is answered.
+    pub fn enter(&mut self, entry: &str) -> String {
+        let report = self.0.enter(&Source::new("entry", entry));
+        let diagnostics = render::render(&report.diagnostics, &report.sources, &Look::PLAIN);
+        format!("{diagnostics}{}", text::render_entry(&report, &Look::PLAIN))
+    }
+
+    /// The prompt that stands before the next entry.
+    #[must_use]
+    pub fn prompt(&self) -> String {
+        format!("{} ∴ ", self.0.model_name())
+    }
+}

@@ -1,0 +1,53 @@
+//! The form of sheets: what reads, what does not, and what is said of it.
+
+use zij_tests::fixture::{check_form, check_form_sheets};
+
+#[test]
+fn fixtures_of_form() {
+    check_form_sheets("parser");
+}
+
+#[test]
+fn every_sheet_of_the_examples_reads() {
+    for path in zij_tests::repository::files("examples", "zij") {
+        check_form(&zij_tests::repository::read(&path));
+    }
+}
+
+#[test]
+fn ten_thousand_open_brackets_are_one_clear_error() {
+    for (opening, code) in [
+        ("(", "nested-too-deep"),
+        ("[", "nested-too-deep"),
+        ("{", "nested-too-deep"),
+    ] {
+        let text = format!("x = {}", opening.repeat(10_000));
+        let found = zij_tests::subject::form(&text);
+        let codes: Vec<_> = found.iter().map(|one| one.code).collect();
+        assert!(codes.contains(&code), "{codes:?}");
+        assert!(codes.len() <= 3, "{codes:?}");
+    }
+}
+
+#[test]
+fn a_hundred_thousand_levels_of_any_kind_end_in_an_error() {
+    let depth = 100_000;
+    let texts = [
+        format!("x = {}1{}", "(".repeat(depth), ")".repeat(depth)),
+        format!("x = {}1", "-".repeat(depth)),
+        format!("x = {}1 > 2", "not ".repeat(depth)),
+        format!("x = {}1", "1 + ".repeat(depth)),
+        format!("x = {}1", "2^".repeat(depth)),
+        format!("x = {}1", "if 1 < 2 then 1 else ".repeat(depth)),
+        format!("x = y{}", ".z".repeat(depth)),
+        format!("x = y{}", " under m".repeat(depth)),
+        format!("x = {}1{}", "f(".repeat(depth), ")".repeat(depth)),
+        format!("x = {}1{}", "{".repeat(depth), "}".repeat(depth)),
+        format!("x = 1 {}", "m/".repeat(depth)),
+        format!("x = y{}", " [m]".repeat(depth)),
+    ];
+    for text in texts {
+        let found = zij_tests::subject::form(&text);
+        assert!(found.iter().any(|one| one.is_error()), "{}", &text[..40]);
+    }
+}
