@@ -6,6 +6,7 @@
 
 use crate::dimension::{Dimension, Exponent, NUMBER};
 use crate::model::{DomainError, Model};
+use crate::{constants, mathematics};
 use num_rational::Ratio;
 
 /// What is known about one name.
@@ -190,5 +191,37 @@ impl Entry {
 
 /// All entries, in the order of the handbook.
 pub fn entries() -> impl Iterator<Item = &'static Entry> {
-    [crate::constants::ENTRIES].into_iter().flatten()
+    let chapters = constants::ENTRIES.into_iter().chain(mathematics::ENTRIES);
+    chapters.flatten()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use std::collections::HashMap;
+
+    #[test]
+    fn no_two_entries_share_a_spelling() {
+        let mut owners = HashMap::new();
+        for entry in entries() {
+            for spelling in entry.spellings() {
+                if let Some(other) = owners.insert(spelling, entry.name) {
+                    panic!("`{spelling}` is both {other} and {}", entry.name);
+                }
+            }
+        }
+    }
+
+    #[test]
+    fn every_entry_says_what_it_is_and_where_it_comes_from() {
+        for entry in entries() {
+            assert!(
+                entry.about.ends_with('.'),
+                "{}: about is one sentence",
+                entry.name
+            );
+            assert!(!entry.source.is_empty(), "{} has no source", entry.name);
+            assert!(!entry.example.is_empty(), "{} has no example", entry.name);
+        }
+    }
 }

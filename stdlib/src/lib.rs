@@ -7,6 +7,7 @@
 pub mod catalogue;
 pub mod constants;
 pub mod dimension;
+pub mod mathematics;
 pub mod model;
 pub mod units;
 pub mod words;

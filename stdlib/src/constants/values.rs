@@ -77,6 +77,32 @@ pub const BOHR_MAGNETON: f64 = 9.274_010_065_7e-24;
 /// Standard uncertainty of [`BOHR_MAGNETON`].
 pub const BOHR_MAGNETON_UNCERTAINTY: f64 = 2.9e-33;
 
+/// Mass of a hydrogen atom, 1.007825031898 atomic mass constants, kg. Wang et
+/// al. 2021, Chinese Phys. C 45, 030003 (from memory).
+pub const HYDROGEN_MASS: f64 = 1.673_532_840_102_174e-27;
+/// Standard uncertainty of [`HYDROGEN_MASS`], that of the atomic mass constant.
+pub const HYDROGEN_MASS_UNCERTAINTY: f64 = 5.2e-37;
+/// Wien displacement constant for wavelength, m K. Exact, rounded once.
+pub const WIEN_WAVELENGTH: f64 = 2.897_771_955_185_172_7e-3;
+/// Wien displacement constant for frequency, Hz/K. Exact, rounded once.
+pub const WIEN_FREQUENCY: f64 = 58_789_257_576.468_25;
+/// Planck length √(ħG/c³), m.
+pub const PLANCK_LENGTH: f64 = 1.616_255_024_423_705_3e-35;
+/// Standard uncertainty of [`PLANCK_LENGTH`], half that of G.
+pub const PLANCK_LENGTH_UNCERTAINTY: f64 = 1.8e-40;
+/// Planck mass √(ħc/G), kg.
+pub const PLANCK_MASS: f64 = 2.176_434_342_717_898_2e-8;
+/// Standard uncertainty of [`PLANCK_MASS`], half that of G.
+pub const PLANCK_MASS_UNCERTAINTY: f64 = 2.4e-13;
+/// Planck time √(ħG/c⁵), s.
+pub const PLANCK_TIME: f64 = 5.391_246_448_313_604e-44;
+/// Standard uncertainty of [`PLANCK_TIME`], half that of G.
+pub const PLANCK_TIME_UNCERTAINTY: f64 = 6.0e-49;
+/// Planck temperature √(ħc⁵/G)/k, K.
+pub const PLANCK_TEMPERATURE: f64 = 1.416_784_162_157_342_5e32;
+/// Standard uncertainty of [`PLANCK_TEMPERATURE`], half that of G.
+pub const PLANCK_TEMPERATURE_UNCERTAINTY: f64 = 1.6e27;
+
 /// Astronomical unit, m. Exact: IAU 2012 Resolution B2.
 pub const ASTRONOMICAL_UNIT: f64 = 149_597_870_700.0;
 /// Parsec, 648000/π au, m. Exact, rounded once: IAU 2015 Resolution B2, note 4.
@@ -110,8 +136,12 @@ pub const SOLAR_MASS: f64 = 1.988_409_870_698_050_7e30;
 pub const SOLAR_MASS_UNCERTAINTY: f64 = 4.4688e25;
 /// Mass of the Earth, the nominal parameter over G of CODATA 2022, kg.
 pub const EARTH_MASS: f64 = 5.972_167_867_791_379e24;
+/// Standard uncertainty of [`EARTH_MASS`], all of it from G.
+pub const EARTH_MASS_UNCERTAINTY: f64 = 1.3422e20;
 /// Mass of Jupiter, the nominal parameter over G of CODATA 2022, kg.
 pub const JUPITER_MASS: f64 = 1.898_124_597_336_050_2e27;
+/// Standard uncertainty of [`JUPITER_MASS`], all of it from G.
+pub const JUPITER_MASS_UNCERTAINTY: f64 = 4.2659e22;
 /// Nominal solar radius, m. IAU 2015 Resolution B3.
 pub const SOLAR_RADIUS: f64 = 6.957e8;
 /// Nominal terrestrial equatorial radius, m. IAU 2015 Resolution B3.
@@ -147,6 +177,9 @@ pub const HI_FREQUENCY: f64 = 1_420_405_751.768;
 pub const HI_FREQUENCY_UNCERTAINTY: f64 = 0.001;
 /// Wavelength of the same line, c/ν, m.
 pub const HI_WAVELENGTH: f64 = 0.211_061_140_541_598;
+/// Rate of spontaneous emission in the same line, 1/s. Gould 1994, ApJ 423,
+/// 522 (from memory).
+pub const HI_TRANSITION_RATE: f64 = 2.884_3e-15;
 /// Vacuum wavelength of Lyman α, the mean of its doublet, m. NIST (from memory).
 pub const LYMAN_ALPHA: f64 = 1.215_67e-7;
 /// Vacuum wavelength of the Lyman limit of hydrogen, 911.75 Å, m (from memory).
@@ -161,3 +194,15 @@ pub const OIII: f64 = 5.008_240e-7;
 /// Vacuum wavelength of \[O II\], the mean of its doublet 3727.092, 3729.875 Å,
 /// m (from memory).
 pub const OII: f64 = 3.728_483_5e-7;
+/// Vacuum wavelength of C IV 1549, the mean of its doublet 1548.204, 1550.781
+/// Å, m. Morton 2003, ApJS 149, 205 (from memory).
+pub const CIV: f64 = 1.549_492_5e-7;
+/// Vacuum wavelength of Mg II 2799, the mean of its doublet 2796.354, 2803.531
+/// Å, m. Morton 2003, ApJS 149, 205 (from memory).
+pub const MGII: f64 = 2.799_942_5e-7;
+/// Frequency of the \[C II\] fine-structure line at 158 μm, Hz. Cooksy, Blake
+/// & Saykally 1986, ApJ 305, L89 (from memory).
+pub const CII_FREQUENCY: f64 = 1.900_536_9e12;
+/// Frequency of the CO(1–0) line, Hz. Winnewisser et al. 1997, J. Mol.
+/// Spectrosc. 184, 468 (from memory).
+pub const CO_FREQUENCY: f64 = 1.152_712_018e11;
