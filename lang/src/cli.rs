@@ -14,6 +14,9 @@ mod run;
 mod terminal;
 
 pub use files::SheetFolder;
+pub(crate) use files::{read_standard_input, reason, write_new, write_output};
+pub(crate) use run::write_tables;
+pub(crate) use terminal::{complain, print};
 pub use terminal::{error_look, output_look};
 
 use arguments::Task;
@@ -30,9 +33,15 @@ impl Failure {
     }
 }
 
+impl std::fmt::Display for Failure {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        f.write_str(&self.0)
+    }
+}
+
 /// The status of a wrong command line, and of files that cannot be read or
 /// written.
-const STATUS_UNUSABLE: u8 = 2;
+pub(crate) const STATUS_UNUSABLE: u8 = 2;
 
 /// Runs the program with the arguments of the process.
 #[must_use]

@@ -14,12 +14,14 @@
 pub mod ast;
 pub mod cli;
 pub mod diagnostic;
-pub mod output;
 pub mod eval;
+pub mod handbook;
 mod layout;
+pub mod output;
 pub mod parser;
 pub mod print;
 pub mod program;
+mod repl;
 pub mod report;
 pub mod session;
 pub mod source;

@@ -101,12 +101,16 @@ pub fn wants_more(text: &str) -> bool {
     }
     let tokens = token::lex(text);
     let Some(last) = tokens.last() else { return false };
-    let trails = last.kind.is_operator()
+    trails(last.kind) || layout::ends_open(text, &tokens)
+}
+
+/// Whether a line that ends in this token goes on.
+pub(crate) fn trails(last: TokenKind) -> bool {
+    last.is_operator()
         || matches!(
-            last.kind,
+            last,
             TokenKind::Comma | TokenKind::Equal | TokenKind::Colon | TokenKind::Where | TokenKind::With
-        );
-    trails || layout::ends_open(text, &tokens)
+        )
 }
 
 /// The tokens of a text, comments and unreadable pieces included, for

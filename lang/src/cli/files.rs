@@ -173,6 +173,34 @@ pub fn write_output(path: &Path, text: &str) -> Result<(), Failure> {
     written.map_err(|error| cannot_write(&name, &error))
 }
 
+/// Writes a file that does not exist yet, whole or not at all. `Ok(false)`
+/// where there is one already, which is left as it is.
+pub fn write_new(path: &Path, text: &str) -> Result<bool, Failure> {
+    let name = path.display().to_string();
+    match place_new(path, text) {
+        Ok(()) => Ok(true),
+        Err(error) if error.kind() == io::ErrorKind::AlreadyExists => Ok(false),
+        Err(error) => Err(cannot_write(&name, &error)),
+    }
+}
+
+/// A link to a part file written before is made in one step and never
+/// replaces anything; where the file system knows no links, the file is.
+fn place_new(target: &Path, text: &str) -> io::Result<()> {
+    if target.symlink_metadata().is_ok() {
+        return Err(io::ErrorKind::AlreadyExists.into());
+    }
+    let part = Part(part_name(target)?);
+    let mut file = File::options().write(true).create_new(true).open(&part.0)?;
+    file.write_all(text.as_bytes())?;
+    file.sync_all()?;
+    drop(file);
+    match fs::hard_link(&part.0, target) {
+        Err(error) if error.kind() != io::ErrorKind::AlreadyExists => fs::rename(&part.0, target),
+        linked => linked,
+    }
+}
+
 fn cannot_write(name: &str, error: &io::Error) -> Failure {
     Failure::new(format!("cannot write {name}: {}", reason(error)))
 }
@@ -185,10 +213,7 @@ fn write_through(path: &Path, text: &str) -> io::Result<()> {
 /// Writes a part file beside the target and renames it: a reader sees the old
 /// file or the new one, and a failure leaves the old one.
 pub fn write_whole(target: &Path, text: &str) -> io::Result<()> {
-    let mut name = std::ffi::OsString::from(".");
-    name.push(target.file_name().ok_or(io::ErrorKind::InvalidInput)?);
-    name.push(format!(".{}.part", std::process::id()));
-    let part = Part(target.with_file_name(name));
+    let part = Part(part_name(target)?);
     let mut file = File::options().write(true).create_new(true).open(&part.0)?;
     file.write_all(text.as_bytes())?;
     if let Ok(old) = fs::metadata(target) {
@@ -197,6 +222,13 @@ pub fn write_whole(target: &Path, text: &str) -> io::Result<()> {
     file.sync_all()?;
     drop(file);
     fs::rename(&part.0, target)
+}
+
+fn part_name(target: &Path) -> io::Result<PathBuf> {
+    let mut name = std::ffi::OsString::from(".");
+    name.push(target.file_name().ok_or(io::ErrorKind::InvalidInput)?);
+    name.push(format!(".{}.part", std::process::id()));
+    Ok(target.with_file_name(name))
 }
 
 /// A file that is removed when it goes out of sight. After a rename there is
@@ -304,6 +336,19 @@ mod tests {
         assert_eq!(names(), ["data", "out.csv"]);
         let text = fs::read_to_string(scratch.0.join("sheets/out.csv"));
         assert_eq!(text.ok().as_deref(), Some("b"));
+    }
+
+    #[test]
+    fn a_new_file_never_takes_the_place_of_another() {
+        let scratch = Scratch::new("new");
+        let path = scratch.0.join("sheets/note.zij");
+        assert_eq!(write_new(&path, "a").ok(), Some(true));
+        assert_eq!(write_new(&path, "b").ok(), Some(false));
+        assert_eq!(fs::read_to_string(&path).ok().as_deref(), Some("a"));
+        assert!(write_new(&scratch.0.join("none/note.zij"), "a").is_err());
+        assert_eq!(write_new(&scratch.0.join("sheets"), "a").ok(), Some(false));
+        let names = fs::read_dir(scratch.0.join("sheets")).expect("a folder");
+        assert_eq!(names.flatten().count(), 2);
     }
 
     #[test]

@@ -6,7 +6,9 @@ use super::files::{self, SheetFolder};
 use super::terminal::{self, error_look, output_look};
 use super::{Failure, STATUS_UNUSABLE};
 use crate::diagnostic::render;
+use crate::handbook;
 use crate::output::{self, Format};
+use crate::repl;
 use crate::report::{Item, Report, TableReport};
 use crate::session::Session;
 use crate::source::Source;
@@ -138,12 +140,17 @@ fn check_one(path: &Path, invocation: &Invocation) -> Result<u8, Failure> {
 
 /// Pages of the handbook.
 pub fn help(topic: &[String]) -> Result<u8, Failure> {
-    let _ = topic;
-    Err(Failure::new("help: not yet"))
+    let page = handbook::page(topic, &output_look()).map_err(Failure::new)?;
+    terminal::print(&page)?;
+    Ok(0)
 }
 
 /// The prompt, or entries from standard input.
 pub fn prompt(invocation: &Invocation) -> Result<u8, Failure> {
-    let _ = invocation;
-    Err(Failure::new("prompt: not yet"))
+    if invocation.format != Format::Text || invocation.output.is_some() {
+        let reason =
+            "the prompt speaks text: for another form or a file, run a sheet, or `zij -` for standard input";
+        return Err(Failure::new(reason));
+    }
+    repl::talk(session(SheetFolder::current(), invocation)?)
 }

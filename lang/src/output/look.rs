@@ -2,7 +2,7 @@
 //! colour, characters. Colours are the terminal's own sixteen, so they follow
 //! the reader's palette on a light ground as well as on a dark one.
 
-use unicode_width::UnicodeWidthStr;
+use unicode_width::{UnicodeWidthChar, UnicodeWidthStr};
 
 /// What the place of output can show.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -59,6 +59,36 @@ impl Look {
         } else {
             text.to_owned()
         }
+    }
+
+    /// The text cut to `columns`, marked where something is missing.
+    /// Escape sequences pass whole.
+    #[must_use]
+    pub fn clip(&self, text: &str, columns: usize) -> String {
+        if width(text) <= columns {
+            return text.to_owned();
+        }
+        let mut clipped = String::new();
+        let mut used = 0;
+        let mut rest = text;
+        while let Some(letter) = rest.chars().next() {
+            if rest.starts_with("\x1b[") {
+                let end = rest.find('m').map_or(rest.len(), |at| at + 1);
+                clipped.push_str(&rest[..end]);
+                rest = &rest[end..];
+                continue;
+            }
+            let columns_of_letter = letter.width().unwrap_or(0);
+            if used + columns_of_letter < columns {
+                clipped.push(letter);
+                used += columns_of_letter;
+            } else if used < columns {
+                clipped.push(if self.unicode { '…' } else { '.' });
+                used = columns;
+            }
+            rest = &rest[letter.len_utf8()..];
+        }
+        clipped
     }
 }
 
@@ -154,6 +184,14 @@ mod tests {
             ["incomprehensibilities", "of it"]
         );
         assert_eq!(wrap("", 5), [""]);
+    }
+
+    #[test]
+    fn clipped_text_keeps_its_colours_and_says_that_it_is_cut() {
+        assert_eq!(Look::PLAIN.clip("Ωm = 0.3", 8), "Ωm = 0.3");
+        assert_eq!(Look::PLAIN.clip("Ωm = 0.3", 4), "Ωm …");
+        assert_eq!(Look::PLAIN.clip("\x1b[2mabcdef\x1b[0m", 3), "\x1b[2mab…\x1b[0m");
+        assert_eq!(Look::PLAIN.clip("abc", 0), "");
     }
 
     #[test]
