@@ -214,3 +214,54 @@ impl Talk {
         format!("{} ∴ ", self.0.model_name())
     }
 }
+
+/// A unit of the catalogue as the properties need it.
+#[derive(Clone, Debug)]
+pub struct KnownUnit {
+    /// Its spelling, prefix included.
+    pub spelling: String,
+    /// A key that units of the same dimension and frame share.
+    pub dimension: String,
+}
+
+/// Every unit of the catalogue, with some of the prefixes it takes.
+#[must_use]
+pub fn units() -> Vec<KnownUnit> {
+    let prefixes = ["", "k", "M", "G", "m", "μ", "n"];
+    let spelled = |unit: &zij_stdlib::units::Unit| {
+        let all = prefixes.map(|prefix| format!("{prefix}{}", unit.symbol));
+        all.into_iter()
+            .filter(|spelling| {
+                zij_stdlib::units::find(spelling).is_some_and(|found| found.unit.symbol == unit.symbol)
+            })
+            .map(|spelling| KnownUnit {
+                spelling,
+                dimension: format!("{:?}", unit.dimension),
+            })
+            .collect::<Vec<_>>()
+    };
+    zij_stdlib::units::UNITS.iter().flat_map(spelled).collect()
+}
+
+/// The examples of the catalogue: the name of each entry and its claim.
+#[must_use]
+pub fn examples() -> Vec<(&'static str, &'static str)> {
+    zij_stdlib::catalogue::entries()
+        .map(|entry| (entry.name, entry.example))
+        .collect()
+}
+
+/// Runs on a pool of so many threads.
+///
+/// # Panics
+/// If the pool cannot be built.
+pub fn on_threads<T: Send>(threads: usize, work: impl FnOnce() -> T + Send) -> T {
+    let pool = rayon::ThreadPoolBuilder::new().num_threads(threads).build();
+    pool.expect("threads can be started").install(work)
+}
+
+/// Whether sessions do not check yet. Goes away with the checker's arrival.
+#[must_use]
+pub fn pending() -> bool {
+    !run("x = 1 m + 1 s\n").has_errors()
+}

@@ -1,0 +1,106 @@
+//! Suites of sheets: fixtures of the checker, golden sessions, published
+//! values, the examples of the library and the example sheets.
+
+use zij_tests::exchange::check_sessions;
+use zij_tests::fixture::check_sheets;
+use zij_tests::published::check_published;
+use zij_tests::{repository, subject};
+
+#[test]
+fn fixtures_of_units() {
+    if subject::pending() {
+        return;
+    }
+    check_sheets("units");
+}
+
+#[test]
+fn fixtures_of_the_checker() {
+    if subject::pending() {
+        return;
+    }
+    check_sheets("checker");
+}
+
+#[test]
+fn fixtures_of_frames() {
+    if subject::pending() {
+        return;
+    }
+    check_sheets("frames");
+}
+
+#[test]
+fn fixtures_of_running() {
+    if subject::pending() {
+        return;
+    }
+    check_sheets("run");
+}
+
+#[test]
+fn golden_sessions() {
+    if subject::pending() {
+        return;
+    }
+    check_sessions();
+}
+
+#[test]
+fn published_values() {
+    if subject::pending() {
+        return;
+    }
+    check_published();
+}
+
+#[test]
+fn every_example_of_the_library_holds() {
+    if subject::pending() {
+        return;
+    }
+    let mut failures = Vec::new();
+    let mut run = 0;
+    for (name, example) in subject::examples() {
+        let report = subject::run(&format!("claim: {example}\n"));
+        run += 1;
+        let unmet = subject::unmet_claims(&report);
+        if report.exit_status() != 0 || report.items.len() != 1 {
+            failures.push(format!(
+                "{name}: {example}\n{}\n{}",
+                unmet.join("\n"),
+                subject::said(&report)
+            ));
+        }
+    }
+    assert!(run > 20, "only {run} examples");
+    assert!(
+        failures.is_empty(),
+        "{} of {run} examples fail\n{}",
+        failures.len(),
+        failures.join("\n")
+    );
+}
+
+#[test]
+fn every_example_sheet_runs_and_its_claims_agree() {
+    if subject::pending() {
+        return;
+    }
+    let paths = repository::files("examples", "zij");
+    let mut failures = Vec::new();
+    for path in &paths {
+        let report = subject::run_at(path, &repository::read(path));
+        let bad = report.exit_status() != 0 || !report.diagnostics.is_empty();
+        if bad {
+            let unmet = subject::unmet_claims(&report).join("\n");
+            failures.push(format!(
+                "==== {}\n{unmet}\n{}",
+                repository::relative(path),
+                subject::said(&report)
+            ));
+        }
+    }
+    assert!(paths.len() >= 10, "only {} example sheets", paths.len());
+    assert!(failures.is_empty(), "{}", failures.join("\n"));
+}
