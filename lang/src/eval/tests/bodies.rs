@@ -1,3 +1,5 @@
+//! Binding forms over bodies.
+
 use super::*;
 
 /// A program whose first body is 1/x.

@@ -1,3 +1,5 @@
+//! Faults: the first node that failed and the values that met it.
+
 use super::*;
 
 /// The span of node `n` of the main block.

@@ -1,3 +1,5 @@
+//! Series in chunks, lane by lane.
+
 use super::*;
 
 #[test]

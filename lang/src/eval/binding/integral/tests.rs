@@ -1,3 +1,5 @@
+//! Integrals with known values, and what has none.
+
 use super::*;
 use std::f64::consts::PI;
 
