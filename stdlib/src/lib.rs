@@ -9,5 +9,6 @@ pub mod constants;
 pub mod dimension;
 pub mod mathematics;
 pub mod model;
+pub mod prelude;
 pub mod units;
 pub mod words;

@@ -169,6 +169,31 @@ pub(super) static ENTRIES: &[Entry] = &[
         ..FUNCTION
     },
     Entry {
+        name: "expm1",
+        synonyms: &["exponential"],
+        about: "exp(x) − 1 without cancellation for small x.",
+        arguments: &[argument("x", NUMBER_TYPE, "a number")],
+        result: NUMBER_TYPE,
+        formula: "eˣ − 1",
+        source: "DLMF 4.2.19",
+        example: "expm1(1e-10) is 1.00000000005e-10",
+        definition: Definition::Function(exponential_less_one),
+        ..FUNCTION
+    },
+    Entry {
+        name: "log1p",
+        synonyms: &["natural logarithm"],
+        about: "ln(1 + x) without cancellation for small x.",
+        arguments: &[argument("x", NUMBER_TYPE, "above -1")],
+        result: NUMBER_TYPE,
+        formula: "ln(1 + x)",
+        validity: "x > −1",
+        source: "DLMF 4.6.1",
+        example: "log1p(1e-10) is 9.9999999995e-11",
+        definition: Definition::Function(logarithm_of_one_more),
+        ..FUNCTION
+    },
+    Entry {
         name: "sin",
         synonyms: &["sine"],
         about: "Sine of an angle.",
@@ -387,6 +412,20 @@ fn exponential(x: &[f64]) -> Result {
     representable(libm::exp(x[0]), "the exponential", x[0])
 }
 
+fn exponential_less_one(x: &[f64]) -> Result {
+    representable(libm::expm1(x[0]), "the exponential", x[0])
+}
+
+fn logarithm_of_one_more(x: &[f64]) -> Result {
+    if x[0] > -1.0 {
+        return Ok(libm::log1p(x[0]));
+    }
+    does_not_exist(format!(
+        "the logarithm of 1 + {} does not exist: it needs a positive number",
+        x[0]
+    ))
+}
+
 fn natural_logarithm(x: &[f64]) -> Result {
     logarithm(libm::log, x[0])
 }
@@ -487,9 +526,11 @@ fn area_tangent(x: &[f64]) -> Result {
 mod tests {
     use super::*;
 
+    type Function = fn(&[f64]) -> Result;
+
     #[test]
     fn what_does_not_exist_is_said_in_words() {
-        let cases: [(fn(&[f64]) -> Result, &[f64], &str); 7] = [
+        let cases: [(Function, &[f64], &str); 7] = [
             (natural_logarithm, &[-3.0], "the logarithm of -3 does not exist"),
             (decimal_logarithm, &[0.0], "the logarithm of 0 does not exist"),
             (square_root, &[-1.0], "a negative value has no square root"),

@@ -350,38 +350,38 @@ mod tests {
     /// Values to 17 digits by mpmath 1.3 at 40 digits.
     #[test]
     fn values_of_a_reference_library_are_met() {
-        close(lower_gamma(&[0.5, 0.5]), 0.682689492137085897, 1e-13);
-        close(upper_gamma(&[0.5, 0.5]), 0.317310507862914103, 1e-13);
-        close(lower_gamma(&[5.0, 9.1535]), 0.949999410908601901, 1e-13);
-        close(upper_gamma(&[5.0, 9.1535]), 0.0500005890913980987, 1e-13);
-        close(lower_gamma(&[50.0, 30.0]), 0.000518891462548034293, 1e-13);
-        close(upper_gamma(&[50.0, 30.0]), 0.999481108537451966, 1e-13);
-        close(lower_gamma(&[50.0, 80.0]), 0.99986921602340859, 1e-13);
-        close(upper_gamma(&[50.0, 80.0]), 0.000130783976591410337, 1e-13);
-        close(lower_gamma(&[1000.0, 1010.0]), 0.627678944736994728, 1e-12);
-        close(upper_gamma(&[1000.0, 1010.0]), 0.372321055263005272, 1e-12);
-        close(lower_gamma(&[1.0e6, 1.001e6]), 0.841344786368340292, 1e-9);
-        close(upper_gamma(&[1.0e6, 1.001e6]), 0.158655213631659708, 1e-9);
-        close(spherical_bessel_0(&[0.01]), 0.999983333416666468, 1e-15);
-        close(spherical_bessel_1(&[0.01]), 0.00333330000011904747, 1e-14);
-        close(spherical_bessel_2(&[0.01]), 6.66661904775132283e-6, 1e-14);
-        close(spherical_bessel_0(&[0.3]), 0.985067355537798585, 1e-15);
-        close(spherical_bessel_1(&[0.3]), 0.0991028880406418765, 1e-14);
-        close(spherical_bessel_2(&[0.3]), 0.00596152486862021728, 1e-14);
-        close(spherical_bessel_0(&[0.7]), 0.920310981768130087, 1e-15);
-        close(spherical_bessel_1(&[0.7]), 0.222098277833773774, 1e-14);
-        close(spherical_bessel_2(&[0.7]), 0.0315387803766147179, 1e-14);
-        close(spherical_bessel_0(&[10.0]), -0.0544021110889369813, 1e-15);
-        close(spherical_bessel_1(&[10.0]), 0.0784669417987515471, 1e-14);
-        close(spherical_bessel_2(&[10.0]), 0.0779421936285624455, 1e-14);
-        close(bessel_0(&[5.0]), -0.177596771314338304, 1e-14);
-        close(bessel_1(&[5.0]), -0.327579137591465222, 1e-14);
-        close(gamma_function(&[4.5]), 11.6317283965674489, 1e-15);
-        close(log_gamma_function(&[1000.5]), 5908.67417584867749, 1e-15);
-        close(error_function(&[0.5]), 0.520499877813046538, 1e-15);
+        close(lower_gamma(&[0.5, 0.5]), 0.682_689_492_137_085_9, 1e-13);
+        close(upper_gamma(&[0.5, 0.5]), 0.317_310_507_862_914_1, 1e-13);
+        close(lower_gamma(&[5.0, 9.1535]), 0.949_999_410_908_601_8, 1e-13);
+        close(upper_gamma(&[5.0, 9.1535]), 0.050_000_589_091_398_095, 1e-13);
+        close(lower_gamma(&[50.0, 30.0]), 0.000_518_891_462_548_034_3, 1e-13);
+        close(upper_gamma(&[50.0, 30.0]), 0.999_481_108_537_452, 1e-13);
+        close(lower_gamma(&[50.0, 80.0]), 0.999_869_216_023_408_6, 1e-13);
+        close(upper_gamma(&[50.0, 80.0]), 0.000_130_783_976_591_410_34, 1e-13);
+        close(lower_gamma(&[1000.0, 1010.0]), 0.627_678_944_736_994_7, 1e-12);
+        close(upper_gamma(&[1000.0, 1010.0]), 0.372_321_055_263_005_3, 1e-12);
+        close(lower_gamma(&[1.0e6, 1.001e6]), 0.841_344_786_368_340_3, 1e-9);
+        close(upper_gamma(&[1.0e6, 1.001e6]), 0.158_655_213_631_659_71, 1e-9);
+        close(spherical_bessel_0(&[0.01]), 0.999_983_333_416_666_5, 1e-15);
+        close(spherical_bessel_1(&[0.01]), 0.003_333_300_000_119_047_5, 1e-14);
+        close(spherical_bessel_2(&[0.01]), 6.666_619_047_751_322_5e-6, 1e-14);
+        close(spherical_bessel_0(&[0.3]), 0.985_067_355_537_798_6, 1e-15);
+        close(spherical_bessel_1(&[0.3]), 0.099_102_888_040_641_88, 1e-14);
+        close(spherical_bessel_2(&[0.3]), 0.005_961_524_868_620_218, 1e-14);
+        close(spherical_bessel_0(&[0.7]), 0.920_310_981_768_130_1, 1e-15);
+        close(spherical_bessel_1(&[0.7]), 0.222_098_277_833_773_78, 1e-14);
+        close(spherical_bessel_2(&[0.7]), 0.031_538_780_376_614_72, 1e-14);
+        close(spherical_bessel_0(&[10.0]), -0.054_402_111_088_936_98, 1e-15);
+        close(spherical_bessel_1(&[10.0]), 0.078_466_941_798_751_55, 1e-14);
+        close(spherical_bessel_2(&[10.0]), 0.077_942_193_628_562_45, 1e-14);
+        close(bessel_0(&[5.0]), -0.177_596_771_314_338_3, 1e-14);
+        close(bessel_1(&[5.0]), -0.327_579_137_591_465_23, 1e-14);
+        close(gamma_function(&[4.5]), 11.631_728_396_567_448, 1e-15);
+        close(log_gamma_function(&[1000.5]), 5_908.674_175_848_678, 1e-15);
+        close(error_function(&[0.5]), 0.520_499_877_813_046_5, 1e-15);
         close(
             complementary_error_function(&[5.0]),
-            1.53745979442803485e-12,
+            1.537_459_794_428_035e-12,
             1e-14,
         );
     }
