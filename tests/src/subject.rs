@@ -243,12 +243,16 @@ pub fn units() -> Vec<KnownUnit> {
     zij_stdlib::units::UNITS.iter().flat_map(spelled).collect()
 }
 
-/// The examples of the catalogue: the name of each entry and its claim.
+/// The examples of the catalogue and of the library's own sheets: the name of
+/// each entry and its claim.
 #[must_use]
-pub fn examples() -> Vec<(&'static str, &'static str)> {
-    zij_stdlib::catalogue::entries()
-        .map(|entry| (entry.name, entry.example))
-        .collect()
+pub fn examples() -> Vec<(String, String)> {
+    let native =
+        zij_stdlib::catalogue::entries().map(|entry| (entry.name.to_owned(), entry.example.to_owned()));
+    let written = zij_stdlib::prelude::written()
+        .iter()
+        .map(|one| (one.name.to_owned(), one.example.clone()));
+    native.chain(written).collect()
 }
 
 /// Runs on a pool of so many threads.
