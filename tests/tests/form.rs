@@ -51,3 +51,14 @@ fn a_hundred_thousand_levels_of_any_kind_end_in_an_error() {
         assert!(found.iter().any(|one| one.is_error()), "{}", &text[..40]);
     }
 }
+
+#[test]
+fn the_generated_sheet_has_the_right_form_and_length() {
+    let sheet = zij_tests::generate::sheet(1000);
+    check_form(&sheet);
+    assert!(
+        (1000..1060).contains(&sheet.lines().count()),
+        "{}",
+        sheet.lines().count()
+    );
+}
