@@ -6,9 +6,11 @@
 
 pub mod catalogue;
 pub mod constants;
+pub mod cosmology;
 pub mod dimension;
 pub mod mathematics;
 pub mod model;
+pub mod numerics;
 pub mod prelude;
 pub mod units;
 pub mod words;

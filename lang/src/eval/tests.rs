@@ -183,7 +183,7 @@ static BASE: Base = Base {
     name: "test",
     about: "",
     source: "",
-    parameters: &[],
+    parameters: &[("H0", 2.2e-18, 0.0), ("Ωm", 0.3, 0.0)],
 };
 
 fn model(settings: &[(usize, NodeId)]) -> Op {

@@ -1,0 +1,5 @@
+//! Numerical methods: `f64` in, `f64` out, no physics.
+
+pub mod interpolate;
+pub mod quadrature;
+pub mod root;
