@@ -138,6 +138,13 @@ impl Dimension {
         self
     }
 
+    /// This dimension with `generator` raised to `power`.
+    #[must_use]
+    pub fn raised(mut self, generator: Generator, power: Exponent) -> Dimension {
+        self.exponents[generator as usize] = power;
+        self
+    }
+
     /// The exponent of `generator`.
     #[must_use]
     pub const fn exponent(&self, generator: Generator) -> Exponent {

@@ -1,0 +1,209 @@
+//! The checker: what every expression of a sheet is, and whether the sheet
+//! makes sense, before any of it is evaluated.
+//!
+//! ```text
+//!   statement   one after another; each definition becomes a binding
+//!   infer       an expression to its dimension and frame (call, bracket, claim)
+//!   unify       the equations that arise, over the rationals
+//!   error       what is wrong, in words; describe puts dimensions in words
+//! ```
+//!
+//! Everything is inferred; nothing need be declared. Errors do not stop it: an
+//! expression that is wrong agrees with everything from there on, so one
+//! mistake is one error. What the checker finds out that the program needs
+//! (powers of 1+z and h that a bracket stands for, exponents of a bridge) it
+//! leaves as a [`Note`] at the place.
+
+mod bracket;
+mod call;
+mod claim;
+mod describe;
+pub mod environment;
+mod error;
+pub mod form;
+mod infer;
+mod library;
+mod model;
+mod statement;
+pub mod typed;
+mod unify;
+mod units;
+
+pub use environment::{BindingId, Environment, Meaning, Place, Space};
+pub use statement::{Column, Output, Quoted, Task};
+pub use typed::Measure;
+
+use crate::ast;
+use crate::diagnostic::Diagnostic;
+use crate::source::{Source, Span};
+use environment::Binding;
+use form::{Exponent, Form};
+use rustc_hash::{FxHashMap, FxHashSet};
+use smol_str::SmolStr;
+use std::sync::Arc;
+use typed::Typed;
+use unify::Unifier;
+
+/// What the checker found out about a place and the program needs.
+#[derive(Clone, Debug)]
+pub enum Note {
+    /// `[kpc at z]`: times (1+z) to this power.
+    Redshift(Exponent),
+    /// `[Mpc for h]`: times h to this power.
+    LittleH(Exponent),
+    /// An argument of the library: times h, in the model in force, to this power.
+    SettledH(Exponent),
+    /// `[cm via c]`: the value to the power ±1 times powers of the constants.
+    Bridge(i32, Vec<Exponent>),
+    /// A bare number that takes the unit written after another.
+    Unit(Arc<Measure>),
+}
+
+/// What has been checked so far.
+#[derive(Clone, Default)]
+pub struct Checker {
+    /// What names stand for.
+    pub environment: Environment,
+    /// Every text that a place may be in.
+    pub sources: Vec<Source>,
+    /// What was found out about places.
+    pub notes: FxHashMap<Place, Note>,
+    /// What the sheet asks to be shown, in order.
+    pub tasks: Vec<Task>,
+    /// What is wrong, each with its source.
+    pub diagnostics: Vec<(usize, Diagnostic)>,
+    /// Values given from outside for inputs: the source and the expression.
+    pub overrides: FxHashMap<SmolStr, (u16, ast::Expr)>,
+    /// Later bindings replace earlier ones.
+    pub at_prompt: bool,
+    unifier: Unifier,
+    locals: Vec<Local>,
+    rests_on: Vec<BindingId>,
+    source: u16,
+    in_library: bool,
+    /// What is being checked needs the model in force.
+    needs_model: bool,
+    /// How many `under` are open.
+    under: u32,
+    /// A function's body: its model comes with the call.
+    in_function: bool,
+    measures: FxHashMap<SmolStr, Arc<Measure>>,
+    lost: FxHashSet<SmolStr>,
+    loaded: FxHashSet<usize>,
+    told_of_uncertainty: bool,
+    imported: Vec<SmolStr>,
+}
+
+/// A parameter, a bound variable or a `where` name.
+#[derive(Clone)]
+struct Local {
+    name: SmolStr,
+    span: Span,
+    typed: Typed,
+    used: bool,
+}
+
+/// How the checker reaches what is outside the sheet.
+pub trait Outside {
+    /// The text of another sheet, or a sentence on why not.
+    fn sheet(&self, path: &str) -> Result<Source, String>;
+    /// The head of a data table, or a sentence on why not.
+    fn head(&self, path: &str) -> Result<Head, String>;
+}
+
+/// The head of a data table.
+pub struct Head {
+    /// Names of the columns with the units written beside them.
+    pub columns: Vec<(String, Option<String>)>,
+}
+
+impl Checker {
+    /// A checker that knows the library alone.
+    #[must_use]
+    pub fn new() -> Checker {
+        Checker::default()
+    }
+
+    /// Checks a sheet, or an entry at the prompt.
+    pub fn check(&mut self, source: Source, outside: &dyn Outside) {
+        let id = self.add_source(source);
+        let before = (self.diagnostics.len(), self.environment.next());
+        self.check_source(id, outside);
+        self.warn_of_unused(id, before.1);
+        self.sort_diagnostics(before.0);
+    }
+
+    /// Gives a text a number.
+    pub fn add_source(&mut self, source: Source) -> u16 {
+        self.sources.push(source);
+        (self.sources.len() - 1) as u16
+    }
+
+    fn check_source(&mut self, id: u16, outside: &dyn Outside) {
+        let text = Arc::clone(&self.sources[usize::from(id)].text);
+        let parsed = crate::parser::parse(&text);
+        let found = parsed.diagnostics.into_iter().map(|diagnostic| (usize::from(id), diagnostic));
+        self.diagnostics.extend(found);
+        let outer = std::mem::replace(&mut self.source, id);
+        self.lost.extend(parsed.lost.into_iter().map(|name| name.node));
+        for statement in parsed.statements {
+            self.statement(statement, outside);
+        }
+        self.source = outer;
+    }
+
+    /// What is wrong in the order of the sheets, each in the order of place.
+    fn sort_diagnostics(&mut self, from: usize) {
+        self.diagnostics[from..].sort_by_key(|(source, diagnostic)| (*source, diagnostic.at.span.start));
+    }
+
+    fn report(&mut self, diagnostic: Diagnostic) {
+        self.diagnostics.push((usize::from(self.source), diagnostic));
+    }
+
+    /// Reports and goes on with what agrees with everything.
+    fn wrong(&mut self, diagnostic: Diagnostic) -> Typed {
+        self.report(diagnostic);
+        Typed::unknown()
+    }
+
+    fn place(&self, span: Span) -> Place {
+        Place { source: self.source, span }
+    }
+
+    fn note(&mut self, span: Span, note: Note) {
+        self.notes.insert(self.place(span), note);
+    }
+
+    fn text(&self, span: Span) -> &str {
+        self.sources[usize::from(self.source)].slice(span)
+    }
+
+    fn spaces(&self) -> [Space; 2] {
+        if self.in_library {
+            [Space::LibraryValue, Space::LibraryFunction]
+        } else {
+            [Space::Value, Space::Function]
+        }
+    }
+
+    fn bind(&mut self, name: &ast::Name, space: Space, meaning: Meaning) -> BindingId {
+        let rests_on = std::mem::take(&mut self.rests_on);
+        self.environment.bind(Binding {
+            name: name.node.clone(),
+            place: self.place(name.span),
+            space,
+            meaning,
+            rests_on,
+            needs_model: self.needs_model,
+            used: std::cell::Cell::new(false),
+        })
+    }
+
+    /// What a form has become, with everything open settled.
+    #[must_use]
+    pub fn settled(&self, form: &Form) -> Form {
+        let form = self.unifier.settled(form);
+        if form.is_open() { form.without(|key| key >= form::FIRST_BOUND) } else { form }
+    }
+}
