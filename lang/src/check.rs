@@ -30,7 +30,7 @@ mod unify;
 mod units;
 
 pub use environment::{BindingId, Environment, Meaning, Place, Space};
-pub use statement::{Column, Output, Quoted, Task};
+pub use statement::{ClaimTask, Column, Face, Output, Show, TableTask, Task};
 pub use typed::Measure;
 
 use crate::ast;
@@ -92,6 +92,8 @@ pub struct Checker {
     loaded: FxHashSet<usize>,
     told_of_uncertainty: bool,
     imported: Vec<SmolStr>,
+    /// Where a sheet binds its names, once a mistake made it matter.
+    later: Option<(u16, FxHashMap<(bool, SmolStr), Span>)>,
 }
 
 /// A parameter, a bound variable or a `where` name.

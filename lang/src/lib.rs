@@ -12,6 +12,7 @@
 //! bridge from the tree to the program: dimensions end there.
 
 pub mod ast;
+pub mod check;
 pub mod cli;
 pub mod diagnostic;
 pub mod eval;
