@@ -15,15 +15,15 @@
 //! leaves as a [`Note`] at the place.
 
 mod bracket;
-mod call;
-mod claim;
+pub mod call;
+pub mod claim;
 mod describe;
 pub mod environment;
 mod error;
 pub mod form;
-mod infer;
-mod library;
-mod model;
+pub mod infer;
+pub mod library;
+pub mod model;
 mod statement;
 pub mod typed;
 mod unify;

@@ -18,6 +18,7 @@ pub mod diagnostic;
 pub mod eval;
 pub mod handbook;
 mod layout;
+pub mod lower;
 pub mod output;
 pub mod parser;
 pub mod print;

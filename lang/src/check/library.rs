@@ -132,7 +132,8 @@ impl Checker {
 }
 
 /// The long name for a symbol of a written function.
-fn canonical(name: &str) -> &str {
+#[must_use]
+pub fn canonical(name: &str) -> &str {
     let written = zij_stdlib::prelude::written();
     let found = written.iter().find(|item| !item.symbol.is_empty() && item.symbol == name);
     found.map_or(name, |item| item.name)

@@ -6,11 +6,13 @@ use super::infer::COMOVING;
 use super::typed::{Generaliser, Kind, Measure, Scheme, Typed};
 use super::unify::Sort;
 use super::{BindingId, Checker, Head, Local, Outside, call, error, library};
-use crate::ast::{self, Binding, Bracket, Definition, Expr, Name, Parameter, Plot, Read, Statement, StatementKind, Text};
+use crate::ast::{self, BinaryOp, Binding, Bracket, Definition as Written, Expr, ExprKind, Name, Parameter, Plot, Read, Statement, StatementKind, Text};
 use crate::source::{Source, Span};
 use smallvec::SmallVec;
 use smol_str::SmolStr;
 use std::sync::Arc;
+use zij_stdlib::catalogue::Definition;
+use zij_stdlib::dimension::LENGTH;
 use zij_stdlib::units;
 
 /// Something the sheet asks to be shown.
@@ -173,12 +175,12 @@ impl Checker {
         true
     }
 
-    fn given_statement(&mut self, definition: Definition) {
+    fn given_statement(&mut self, definition: Written) {
         self.value_statement(definition, true);
     }
 
     /// Checks and binds a value; `None` where it could not be bound.
-    fn value_statement(&mut self, definition: Definition, given: bool) -> Option<BindingId> {
+    fn value_statement(&mut self, definition: Written, given: bool) -> Option<BindingId> {
         let outer = self.locals.len();
         let mut typed = self.infer_with_wheres(&definition.value, &definition.wheres);
         self.end_wheres(outer);
@@ -189,7 +191,7 @@ impl Checker {
 
     fn bind_value(
         &mut self,
-        definition: Definition,
+        definition: Written,
         typed: Typed,
         given: bool,
         instead: Option<(u16, Expr)>,
@@ -212,7 +214,7 @@ impl Checker {
     }
 
     /// What the command line gives for an input, if it is of its dimension.
-    fn instead_of(&mut self, definition: &Definition, typed: &Typed) -> Option<(u16, Expr)> {
+    fn instead_of(&mut self, definition: &Written, typed: &Typed) -> Option<(u16, Expr)> {
         let (source, expr) = self.overrides.remove(&definition.name.node)?;
         let outer = std::mem::replace(&mut self.source, source);
         let other = self.infer(&expr);
@@ -248,7 +250,7 @@ impl Checker {
         }
     }
 
-    fn annotated(&mut self, definition: &Definition, typed: Typed) -> Typed {
+    fn annotated(&mut self, definition: &Written, typed: Typed) -> Typed {
         match &definition.annotation {
             Some(bracket) => self.fits_annotation(typed, definition.value.span, bracket),
             None => typed,
@@ -270,7 +272,7 @@ impl Checker {
         Typed::quantity(form).shown_in(Some(measure))
     }
 
-    fn function_statement(&mut self, definition: Definition, parameters: Vec<Parameter>) {
+    fn function_statement(&mut self, definition: Written, parameters: Vec<Parameter>) {
         let outer = self.locals.len();
         let was_in_function = std::mem::replace(&mut self.in_function, true);
         let takes: Vec<Typed> = parameters.iter().map(|parameter| self.parameter(parameter)).collect();
@@ -291,7 +293,7 @@ impl Checker {
         self.bind_function(definition, parameters, takes, result);
     }
 
-    fn bind_function(&mut self, definition: Definition, parameters: Vec<Parameter>, takes: Vec<Typed>, result: Typed) {
+    fn bind_function(&mut self, definition: Written, parameters: Vec<Parameter>, takes: Vec<Typed>, result: Typed) {
         let space = self.spaces()[1];
         self.warn_of_library_name(&definition.name, true);
         if self.is_duplicate(&definition.name, space) {
@@ -331,7 +333,7 @@ impl Checker {
         typed
     }
 
-    fn result_statement(&mut self, definition: Definition) {
+    fn result_statement(&mut self, definition: Written) {
         let name = definition.name.node.clone();
         let about = definition.about.as_ref().map(|text| text.node.clone());
         let place = self.place(definition.value.span);
@@ -386,7 +388,7 @@ impl Checker {
     /// At the prompt `that` is the last value.
     fn bind_that(&mut self, value: &Expr, wheres: &[Binding], typed: &Typed) {
         let name = Name { node: SmolStr::new_static("that"), span: value.span };
-        let definition = Definition {
+        let definition = Written {
             name: name.clone(),
             annotation: None,
             value: value.clone(),
@@ -537,7 +539,7 @@ impl Checker {
             self.lost.insert(name.node.clone());
             return;
         }
-        let Some((factor, measure)) = self.unit_size(value) else {
+        let Some((factor, measure)) = self.unit_size(value, &typed) else {
             self.lost.insert(name.node.clone());
             self.report(error::unit_is_no_literal(value.span));
             return;
@@ -547,23 +549,47 @@ impl Checker {
         self.environment.units.insert(name.node.clone(), UserUnit { measure, place: self.place(name.span) });
     }
 
-    /// The size and dimension of what a unit is defined as: a literal.
-    fn unit_size(&mut self, value: &Expr) -> Option<(f64, Measure)> {
-        let written = super::claim::written(value)?;
-        let plain = Measure {
+    /// The size and dimension of what a unit is defined as.
+    fn unit_size(&mut self, value: &Expr, typed: &Typed) -> Option<(f64, Measure)> {
+        let size = self.fold(value)?;
+        let form = self.settled(&typed.form);
+        let written = typed.unit.as_ref();
+        let measure = Measure {
             text: SmolStr::default(),
             factor: 1.0,
-            form: Form::number(),
-            framed: false,
-            names_length: false,
+            framed: written.is_some_and(|unit| unit.framed),
+            names_length: written.is_some_and(|unit| unit.names_length) || form == Form::dimension(&LENGTH),
+            form,
             slashed: SmallVec::new(),
         };
-        let measure = match written.unit {
-            Some(unit) => (*self.measure(unit, true)?).clone(),
-            None => plain,
-        };
-        let size = written.sign * written.number.value * measure.factor;
         (size > 0.0 && size.is_finite()).then_some((size, measure))
+    }
+
+    /// The value of an expression of written numbers and constants.
+    fn fold(&self, expr: &Expr) -> Option<f64> {
+        match &expr.kind {
+            ExprKind::Quantity(quantity) => {
+                let factor = quantity.unit.as_ref().map_or(1.0, |unit| self.size_of(unit));
+                Some(quantity.number.value * factor)
+            }
+            ExprKind::Group(inner) | ExprKind::Express(inner, Bracket { conversion: None, .. }) => self.fold(inner),
+            ExprKind::Name(name) => match library::value(name)?.definition {
+                Definition::Constant(value, _) if self.environment.latest(Space::Value, name).is_none() => Some(value),
+                _ => None,
+            },
+            ExprKind::Unary(op, inner) if op.node == ast::UnaryOp::Negate => self.fold(inner).map(|value| -value),
+            ExprKind::Binary(op, left, right) => {
+                let (a, b) = (self.fold(left)?, self.fold(right)?);
+                Some(match op.node {
+                    BinaryOp::Add => a + b,
+                    BinaryOp::Subtract => a - b,
+                    BinaryOp::Multiply => a * b,
+                    BinaryOp::Divide => a / b,
+                    BinaryOp::Power => libm::pow(a, b),
+                })
+            }
+            _ => None,
+        }
     }
 
     fn may_name_unit(&mut self, name: &Name) -> bool {
@@ -574,12 +600,10 @@ impl Checker {
         let unit = self.environment.units.get(&name.node).map(|unit| unit.place);
         let tally = self.environment.tallies.iter().find(|(known, _)| *known == name.node).map(|(_, place)| *place);
         if let Some(first) = unit.or(tally) {
-            if !self.at_prompt {
-                let here = (first.source == self.source).then_some(first.span);
-                let elsewhere = self.sources[usize::from(first.source)].name.to_string();
-                self.report(error::duplicate_name(name, here, &elsewhere));
-            }
-            return self.at_prompt && tally.is_none();
+            let here = (first.source == self.source).then_some(first.span);
+            let elsewhere = self.sources[usize::from(first.source)].name.to_string();
+            self.report(error::duplicate_name(name, here, &elsewhere));
+            return false;
         }
         if self.environment.latest(Space::Value, &name.node).is_some() {
             self.report(error::unit_shadows_name(name));

@@ -102,6 +102,19 @@ impl Checker {
         Some(Part::of(found))
     }
 
+    /// The size in SI of a unit that has been checked.
+    #[must_use]
+    pub fn size_of(&self, unit: &Unit) -> f64 {
+        let part = |factor: &UnitFactor| {
+            let name = factor.name.node.as_str();
+            let user = || self.user_unit(name);
+            let little_h = || (name == "h").then(Part::little_h);
+            user().or_else(little_h).or_else(|| units::find(name).map(Part::of))
+        };
+        let parts: Option<Vec<Part>> = unit.factors.iter().map(part).collect();
+        parts.map_or(f64::NAN, |parts| as_magnitude(product(unit, &parts)).factor)
+    }
+
     fn user_unit(&self, name: &str) -> Option<Part> {
         if let Some(key) = self.environment.tally(name) {
             return Some(Part { factor: 1.0, form: Form::of(key), framed: false, names_length: false });
