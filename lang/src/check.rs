@@ -25,6 +25,7 @@ pub mod infer;
 pub mod library;
 pub mod model;
 mod statement;
+pub mod statement_words;
 pub mod typed;
 mod unify;
 mod units;
@@ -72,10 +73,14 @@ pub struct Checker {
     pub tasks: Vec<Task>,
     /// What is wrong, each with its source.
     pub diagnostics: Vec<(usize, Diagnostic)>,
-    /// Values given from outside for inputs: the source and the expression.
-    pub overrides: FxHashMap<SmolStr, (u16, ast::Expr)>,
+    /// Values given from outside for inputs, as text.
+    pub givens: Vec<(SmolStr, SmolStr)>,
     /// Later bindings replace earlier ones.
     pub at_prompt: bool,
+    /// The same as expressions, until the sheet takes them.
+    overrides: FxHashMap<SmolStr, (u16, ast::Expr)>,
+    /// What every expression was found to be, where that is wanted.
+    record: Option<FxHashMap<Place, Typed>>,
     unifier: Unifier,
     locals: Vec<Local>,
     rests_on: Vec<BindingId>,
@@ -92,6 +97,7 @@ pub struct Checker {
     loaded: FxHashSet<usize>,
     told_of_uncertainty: bool,
     imported: Vec<SmolStr>,
+    including: Vec<SmolStr>,
     /// Where a sheet binds its names, once a mistake made it matter.
     later: Option<(u16, FxHashMap<(bool, SmolStr), Span>)>,
 }
@@ -130,7 +136,13 @@ impl Checker {
     pub fn check(&mut self, source: Source, outside: &dyn Outside) {
         let id = self.add_source(source);
         let before = (self.diagnostics.len(), self.environment.next());
+        self.read_givens();
+        let name = Arc::clone(&self.sources[usize::from(id)].name);
+        let own = name.rsplit(['/', '\\']).next().unwrap_or("");
+        self.including.push(own.into());
         self.check_source(id, outside);
+        self.including.pop();
+        self.refuse_left_over();
         self.warn_of_unused(id, before.1);
         self.sort_diagnostics(before.0);
     }
@@ -139,6 +151,66 @@ impl Checker {
     pub fn add_source(&mut self, source: Source) -> u16 {
         self.sources.push(source);
         (self.sources.len() - 1) as u16
+    }
+
+    fn read_givens(&mut self) {
+        for (name, text) in std::mem::take(&mut self.givens) {
+            let source = self.add_source(Source::new(&format!("--given {name}"), &text));
+            let statements = crate::parser::parse(&text).statements;
+            let value = statements.into_iter().find_map(|statement| match statement.kind {
+                ast::StatementKind::Expression(value, _) => Some(value),
+                _ => None,
+            });
+            self.overrides.extend(value.map(|value| (name, (source, value))));
+        }
+    }
+
+    /// Values that were given for what is no input.
+    fn refuse_left_over(&mut self) {
+        let mut left: Vec<(SmolStr, (u16, ast::Expr))> = self.overrides.drain().collect();
+        left.sort_by_key(|(_, (source, _))| *source);
+        for (name, (source, value)) in left {
+            let bound = self.environment.latest(Space::Value, &name).is_some();
+            let diagnostic = error::no_such_given(value.span, &name, bound);
+            self.diagnostics.push((usize::from(source), diagnostic));
+        }
+    }
+
+    /// What every expression is; found by checking once more.
+    #[must_use]
+    pub fn every_type(&self) -> FxHashMap<Place, Typed> {
+        let mut trial = self.clone();
+        trial.at_prompt = true;
+        trial.record = Some(FxHashMap::default());
+        let is_library = |name: &str| zij_stdlib::prelude::CHAPTERS.iter().any(|chapter| chapter.name == name);
+        for (id, source) in self.sources.iter().enumerate().filter(|(_, source)| !is_library(&source.name)) {
+            trial.source = id as u16;
+            for statement in crate::parser::parse(&source.text).statements {
+                use ast::StatementKind::{Include, Read, Tally, Unit};
+                if !matches!(statement.kind, Include(_) | Read(_) | Tally(_) | Unit(..)) {
+                    trial.statement(statement, &statement::Nothing);
+                }
+            }
+        }
+        let record = trial.record.take().unwrap_or_default();
+        let settled = record.into_iter().map(|(place, typed)| {
+            let form = trial.settled(&typed.form);
+            (place, Typed { form, ..typed })
+        });
+        settled.collect()
+    }
+
+    /// The unit in which a value of this dimension is shown and its size: the
+    /// one asked for, or else the usual one.
+    #[must_use]
+    pub fn unit_of(&self, form: &Form, unit: Option<&Arc<Measure>>) -> (String, f64) {
+        let form = self.settled(form);
+        if let Some(measure) = unit.filter(|measure| is_unit_for(measure, &form)) {
+            return (measure.text.to_string(), measure.factor);
+        }
+        let text = self.unit_text(&form);
+        let factor = crate::parser::parse_unit(&text).map_or(1.0, |unit| self.size_of(&unit));
+        (text, factor)
     }
 
     fn check_source(&mut self, id: u16, outside: &dyn Outside) {
@@ -208,4 +280,12 @@ impl Checker {
         let form = self.unifier.settled(form);
         if form.is_open() { form.without(|key| key >= form::FIRST_BOUND) } else { form }
     }
+}
+
+/// Whether values of a dimension can be shown in a unit; the frame is said
+/// beside it.
+fn is_unit_for(measure: &Measure, form: &Form) -> bool {
+    let angle_is_open = form.has_other_dimension() || measure.form.has_other_dimension();
+    let free = |key| key == infer::COMOVING || (angle_is_open && key == infer::ANGLE);
+    form.per(&measure.form).without(free).is_number()
 }

@@ -13,7 +13,9 @@
 
 pub mod ast;
 pub mod check;
+pub mod claim;
 pub mod cli;
+pub mod data;
 pub mod diagnostic;
 pub mod eval;
 pub mod handbook;

@@ -16,6 +16,8 @@ mod binding;
 mod expression;
 mod model;
 
+pub use model::DEFAULT_MODEL;
+
 use crate::ast::{Binding as Where, Expr};
 use crate::check::{BindingId, Checker, Meaning, Output, Space};
 use crate::program::{Block, Node, NodeId, Op, Program};

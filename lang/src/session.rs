@@ -1,6 +1,14 @@
 //! A session: text in, values and diagnostics out. It touches no terminal,
 //! and files only through [`Files`].
 
+mod assist;
+mod evaluate;
+mod repair;
+mod words;
+
+use crate::ast::StatementKind;
+use crate::check::{Checker, Head, Meaning, Outside, Space};
+use crate::data;
 use crate::report::Report;
 use crate::source::Source;
 
@@ -22,6 +30,7 @@ impl Files for NoFiles {
 /// A sequence of sheets or entries that share their names.
 pub struct Session {
     files: Box<dyn Files>,
+    checker: Checker,
 }
 
 /// What the name under the cursor could become.
@@ -67,85 +76,150 @@ pub enum NameKind {
     Unknown,
 }
 
+/// What the checker may reach through the session's files.
+struct Reach<'a>(&'a dyn Files);
+
+impl Outside for Reach<'_> {
+    fn sheet(&self, path: &str) -> Result<Source, String> {
+        let bytes = self.0.read(path)?;
+        let text = String::from_utf8(bytes).map_err(|_| format!("{path}: not UTF-8 text"))?;
+        Ok(Source::new(path, &text))
+    }
+
+    fn head(&self, path: &str) -> Result<Head, String> {
+        let columns = data::read(path, &self.0.read(path)?)?.columns;
+        Ok(Head { columns })
+    }
+}
+
 impl Session {
     /// A session with the library and nothing else.
     #[must_use]
     pub fn new(files: Box<dyn Files>) -> Session {
-        Session { files }
+        Session { files, checker: Checker::new() }
     }
 
     /// Overrides `given NAME`, as `--given z=1.3` does. The error is a
     /// sentence.
+    ///
+    /// # Errors
+    /// Text that is not `NAME=VALUE`.
     pub fn give(&mut self, assignment: &str) -> Result<(), String> {
-        let _ = assignment;
+        let (name, value) = assignment.split_once('=').ok_or("write it as NAME=VALUE")?;
+        let (name, value) = (name.trim(), value.trim());
+        if name.is_empty() || value.is_empty() {
+            return Err("write it as NAME=VALUE".into());
+        }
+        let parsed = crate::parser::parse(value);
+        if let Some(wrong) = parsed.diagnostics.first() {
+            return Err(wrong.message.clone());
+        }
+        match parsed.statements.as_slice() {
+            [one] if matches!(one.kind, StatementKind::Expression(..)) => {}
+            _ => return Err(format!("{value} is not a value")),
+        }
+        self.checker.givens.push((name.into(), value.into()));
         Ok(())
     }
 
     /// Checks a whole sheet and evaluates nothing.
     pub fn check(&mut self, source: &Source) -> Report {
-        Report {
-            sources: vec![source.clone()],
-            ..Report::default()
-        }
+        let before = self.checker.clone();
+        self.checker.check(source.clone(), &Reach(&*self.files));
+        self.report(&before, source)
     }
 
     /// Checks a whole sheet and, if it has no error, runs it.
     pub fn run(&mut self, source: &Source) -> Report {
-        let _ = &self.files;
-        self.check(source)
+        let mut report = self.check(source);
+        if !report.has_errors() {
+            evaluate::evaluate(&self.checker, &*self.files, &mut report);
+        }
+        report
     }
 
     /// One entry at the prompt (may be several lines): names stay, a later
     /// binding replaces an earlier one, `that` is the last value.
     pub fn enter(&mut self, source: &Source) -> Report {
-        self.run(source)
+        let before = self.checker.clone();
+        self.checker.at_prompt = true;
+        self.checker.tasks.clear();
+        self.checker.diagnostics.clear();
+        self.checker.check(source.clone(), &Reach(&*self.files));
+        let mut report = self.report(&before, source);
+        if report.has_errors() {
+            self.checker = before;
+        } else {
+            evaluate::evaluate(&self.checker, &*self.files, &mut report);
+        }
+        report
+    }
+
+    /// What the checker found, with the repairs that are proved to help.
+    fn report(&self, before: &Checker, source: &Source) -> Report {
+        let mut diagnostics = self.checker.diagnostics.clone();
+        repair::prove(&mut diagnostics, before, source, &Reach(&*self.files));
+        Report { sources: self.checker.sources.clone(), diagnostics, ..Report::default() }
     }
 
     /// The names bound at the prompt, each with its dimension in words and
     /// its source text, in order.
     #[must_use]
     pub fn names(&self) -> Vec<(String, String, String)> {
-        Vec::new()
+        let visible = self.checker.environment.visible();
+        let own = visible.filter(|(_, binding)| {
+            !matches!(binding.space, Space::LibraryValue | Space::LibraryFunction)
+        });
+        own.map(|(id, binding)| {
+            let (name, what) = match &binding.meaning {
+                Meaning::Value(value) => (binding.name.to_string(), self.checker.describe(&value.scheme.typed.form)),
+                Meaning::Function(_) => (self.checker.signature_of(id), "a function".into()),
+                Meaning::Model(_) => (binding.name.to_string(), "a model".into()),
+                Meaning::Table(_) => (binding.name.to_string(), "a table".into()),
+                Meaning::Broken => (binding.name.to_string(), String::new()),
+            };
+            (name, what, self.statement_text(binding.place))
+        })
+        .collect()
+    }
+
+    /// The text of the statement that a place is in.
+    fn statement_text(&self, place: crate::check::Place) -> String {
+        let text = &self.checker.sources[usize::from(place.source)].text;
+        let parsed = crate::parser::parse(text);
+        let around = |span: crate::source::Span| span.start <= place.span.start && place.span.end <= span.end;
+        let statement = parsed.statements.iter().find(|statement| around(statement.span));
+        statement.map_or_else(String::new, |statement| text[statement.span.range()].to_owned())
     }
 
     /// Forgets a name. The error is a sentence.
+    ///
+    /// # Errors
+    /// A name that is not bound.
     pub fn strike(&mut self, name: &str) -> Result<(), String> {
-        Err(format!("there is no name {name} to strike"))
+        let spaces = [Space::Value, Space::Function, Space::Model];
+        let struck = spaces.map(|space| self.checker.environment.strike(space, name));
+        if struck.contains(&true) {
+            Ok(())
+        } else {
+            Err(format!("there is no name {name} to strike"))
+        }
     }
 
     /// The name of the assumed model, for the prompt.
     #[must_use]
     pub fn model_name(&self) -> String {
-        "planck2018".into()
+        match &self.checker.environment.assumed {
+            None => crate::lower::DEFAULT_MODEL.into(),
+            Some(model) if model.written.settings.is_empty() => model.written.base.node.to_string(),
+            Some(model) => format!("{} with …", model.written.base.node),
+        }
     }
 
     /// Whether an entry wants another line: an open bracket, a trailing
     /// operator, comma, `where` or `with`.
     #[must_use]
     pub fn wants_more(&self, entry: &str) -> bool {
-        let _ = entry;
-        false
-    }
-
-    /// The dimension of a line so far, or what is wrong with it.
-    #[must_use]
-    pub fn hint(&self, line: &str) -> Hint {
-        let _ = line;
-        Hint::Nothing
-    }
-
-    /// What the word that ends at byte `cursor` could become, and where that
-    /// word starts.
-    #[must_use]
-    pub fn complete(&self, line: &str, cursor: usize) -> (usize, Vec<Completion>) {
-        let _ = line;
-        (cursor, Vec::new())
-    }
-
-    /// The pieces of a line by what they are; gaps are plain.
-    #[must_use]
-    pub fn highlight(&self, line: &str) -> Vec<(std::ops::Range<usize>, NameKind)> {
-        let _ = line;
-        Vec::new()
+        crate::parser::wants_more(entry)
     }
 }

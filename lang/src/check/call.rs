@@ -404,6 +404,7 @@ impl Checker {
             return None;
         }
         let variable = self.infer_bounds(form, &name.node, parts.over)?;
+        self.remember(parts.variable.span, &variable);
         self.locals.push(Local {
             name: parts.variable.node.clone(),
             span: parts.variable.span,

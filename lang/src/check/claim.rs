@@ -127,6 +127,13 @@ impl Checker {
             None => {}
             Some(Tolerance::Sigma(count)) => {
                 self.infer_number(count, "how many sigma");
+                let quoted = match &claim.assertion {
+                    Some(Assertion::Is(quoted) | Assertion::About(quoted)) => written(quoted),
+                    Some(_) | None => None,
+                };
+                if quoted.is_none_or(|quoted| quoted.number.uncertainty.is_none()) {
+                    self.report(error::sigma_of_nothing(count.span));
+                }
             }
             Some(Tolerance::Amount(amount)) => {
                 let typed = self.infer_quantity(amount);

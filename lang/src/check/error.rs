@@ -284,6 +284,27 @@ pub(super) fn wrong_given(span: Span, name: &str, words: &[String; 2]) -> Diagno
     Diagnostic::error("wrong-given", message, span, &words[1])
 }
 
+pub(super) fn no_such_given(span: Span, name: &str, bound: bool) -> Diagnostic {
+    let message = format!("the sheet has no input {name}");
+    let error = Diagnostic::error("wrong-given", message, span, "given for nothing");
+    error.note(if bound {
+        format!("{name} is bound in it, but not by `given`, so it cannot be replaced")
+    } else {
+        "an input is a line `given NAME = …`".into()
+    })
+}
+
+pub(super) fn include_cycle(span: Span, path: &str) -> Diagnostic {
+    let message = format!("{path} is being read already, so it cannot be included here");
+    Diagnostic::error("include-cycle", message, span, "includes itself")
+}
+
+pub(super) fn sigma_of_nothing(span: Span) -> Diagnostic {
+    let message = "sigma is an uncertainty, and the quoted number has none";
+    Diagnostic::error("claim-needs-number", message, span, "of what?")
+        .note("quote it with its uncertainty: `is 67.4(5) km/s/Mpc within 2 sigma`")
+}
+
 pub(super) fn unlike_default(value: Span, name: Span, words: &[String; 2]) -> Diagnostic {
     let message = format!("the parameter is {}, and its default {}", words[0], words[1]);
     Diagnostic::error("unlike-sides", message, value, &words[1]).and(name, &words[0])

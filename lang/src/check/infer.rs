@@ -20,6 +20,20 @@ pub(super) const LITTLE_H: Key = Generator::LittleH as Key;
 impl Checker {
     /// What an expression is.
     pub(super) fn infer(&mut self, expr: &Expr) -> Typed {
+        let typed = self.infer_kind(expr);
+        self.remember(expr.span, &typed);
+        typed
+    }
+
+    /// Writes down what stands at a place, where that is wanted.
+    pub(super) fn remember(&mut self, span: Span, typed: &Typed) {
+        let place = self.place(span);
+        if let Some(record) = &mut self.record {
+            record.insert(place, typed.clone());
+        }
+    }
+
+    fn infer_kind(&mut self, expr: &Expr) -> Typed {
         match &expr.kind {
             ExprKind::Quantity(quantity) => self.infer_literal(&quantity.number, quantity.unit.as_ref()),
             ExprKind::Quantities(numbers, unit) => self.infer_literals(numbers, unit),

@@ -417,6 +417,7 @@ impl Checker {
         let sound = !over.is_unknown();
         let variable = over.clone();
         let (name, at) = (plot.variable.node.clone(), plot.variable.span);
+        self.remember(at, &over);
         self.locals.push(Local { name, span: at, typed: over, used: true });
         let typed: Vec<Typed> = plot.columns.iter().map(|(column, _)| self.infer(column)).collect();
         self.locals.pop();
@@ -517,6 +518,10 @@ impl Checker {
     }
 
     fn include_statement(&mut self, path: &Text, outside: &dyn Outside) {
+        if self.including.contains(&path.node) {
+            self.report(error::include_cycle(path.span, &path.node));
+            return;
+        }
         if self.imported.contains(&path.node) {
             return;
         }
@@ -525,7 +530,9 @@ impl Checker {
             Ok(source) => {
                 let tasks = self.tasks.len();
                 let id = self.add_source(source);
+                self.including.push(path.node.clone());
                 self.check_source(id, outside);
+                self.including.pop();
                 // An included sheet lends its definitions; its outputs are its own.
                 self.tasks.truncate(tasks);
             }

@@ -1,11 +1,10 @@
 //! Binding forms: the body becomes a block of its own.
 
 use super::{At, Builder, Lowering};
-use crate::ast::{Argument, BinaryOp, Expr, ExprKind};
+use crate::ast::{Argument, BinaryOp, Expr, ExprKind, Name};
 use crate::check::call::{BindingForm, Right, binding_parts};
 use crate::program::{Bind, BlockId, Form, NodeId, Op};
 use crate::source::Span;
-use smol_str::SmolStr;
 
 impl Lowering<'_> {
     /// A binding form, or the place (`.at`) it found.
@@ -18,7 +17,7 @@ impl Lowering<'_> {
     ) -> NodeId {
         let Some(parts) = binding_parts(arguments) else { return self.missing(span) };
         let (from, to) = self.lower_bounds(form, parts.over);
-        let (body, captures) = self.body(&parts.variable.node, span, |this| {
+        let (body, captures) = self.body(parts.variable, |this| {
             let left = this.lower(parts.body);
             match parts.right {
                 None => left,
@@ -54,15 +53,14 @@ impl Lowering<'_> {
     /// A body of one variable, and what it captures of the block around it.
     pub(super) fn body(
         &mut self,
-        variable: &SmolStr,
-        span: Span,
+        variable: &Name,
         work: impl FnOnce(&mut Self) -> NodeId,
     ) -> (BlockId, Vec<NodeId>) {
         let outer = self.level;
         self.builders.push(Builder::new(outer, 1));
         self.level = self.builders.len() - 1;
-        let input = self.emit(Op::Input(0), span);
-        self.locals.push((variable.clone(), At { level: self.level, node: input }));
+        let input = self.emit(Op::Input(0), variable.span);
+        self.locals.push((variable.node.clone(), At { level: self.level, node: input }));
         let result = work(self);
         self.locals.pop();
         self.level = outer;

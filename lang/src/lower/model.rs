@@ -123,8 +123,7 @@ impl Lowering<'_> {
                     given.numbers.push((id, node));
                 }
                 Some(variable) => {
-                    let span = setting.value.span;
-                    let (body, captures) = self.body(&variable.node, span, |this| this.lower(&setting.value));
+                    let (body, captures) = self.body(variable, |this| this.lower(&setting.value));
                     given.function = Some((id, body, captures));
                 }
             }
