@@ -5,7 +5,7 @@
 mod dimensioned;
 mod written;
 
-use dimensioned::dimensioned;
+use dimensioned::{Case, FRAMES, SI, dimensioned};
 use proptest::prelude::*;
 use proptest::test_runner::Config;
 use zij_tests::subject;
@@ -103,11 +103,16 @@ proptest! {
     }
 }
 
+/// Which base units a case is built of.
+fn cases() -> impl Strategy<Value = Case> {
+    prop_oneof![dimensioned(&SI), dimensioned(&FRAMES)]
+}
+
 proptest! {
-    #![proptest_config(config(400))]
+    #![proptest_config(config(600))]
 
     #[test]
-    fn inferred_dimensions_are_those_of_pencil_and_paper(case in dimensioned()) {
+    fn inferred_dimensions_are_those_of_pencil_and_paper(case in cases()) {
         if subject::pending() { return Ok(()); }
         let sheet = case.sheet(&case.unit());
         let report = subject::run(&sheet);
@@ -120,7 +125,7 @@ proptest! {
     }
 
     #[test]
-    fn a_wrong_unit_is_found_out(case in dimensioned()) {
+    fn a_wrong_unit_is_found_out(case in cases()) {
         if subject::pending() { return Ok(()); }
         for wrong in case.wrong_units() {
             let sheet = case.sheet(&wrong);
@@ -130,11 +135,12 @@ proptest! {
     }
 
     #[test]
-    fn a_wrong_sum_is_found_out(case in dimensioned()) {
+    fn a_wrong_sum_is_found_out(case in cases()) {
         if subject::pending() { return Ok(()); }
         let sheet = case.wrong_sum();
         let report = subject::run(&sheet);
-        let codes: Vec<_> = report.diagnostics.iter().filter(|(_, one)| one.is_error()).map(|(_, one)| one.code).collect();
+        let errors = report.diagnostics.iter().filter(|(_, one)| one.is_error());
+        let codes: Vec<_> = errors.map(|(_, one)| one.code).collect();
         prop_assert_eq!(codes, ["unlike-sides"], "{}", sheet);
     }
 }
