@@ -1,7 +1,7 @@
 //! How a diagnostic looks. The only file that knows ariadne, which draws the
 //! lines of the sheet with their labels; the words around them are ours.
 //!
-//! Ariadne is not given the sheet but an [`Excerpt`] of it: the lines that
+//! Ariadne is not given the sheet but an `Excerpt` of it: the lines that
 //! have labels, each cut to a width a person can read and with nothing in it
 //! that a terminal would obey. So a line of fifty megabytes costs no more than
 //! a short one, and the byte offsets it is told are always on a character.

@@ -2,9 +2,11 @@
 //! catalogue says of them, in words.
 
 use super::layout::Setter;
+use super::written::{self, Form};
 use crate::parser;
 use zij_stdlib::catalogue::{self, Argument, Definition, Entry, Topic, Type};
 use zij_stdlib::model::{BASES, Base, PARAMETERS, Parameter, Takes};
+use zij_stdlib::prelude::{self, Written};
 use zij_stdlib::units::{self, Found, Prefixes, Unit};
 use zij_stdlib::words;
 
@@ -29,7 +31,36 @@ pub(super) struct Item {
 
 /// Everything of the library, in the order of the handbook.
 pub(super) fn items() -> impl Iterator<Item = Item> {
-    catalogue::entries().map(of_entry)
+    let forms = written::forms();
+    let functions = prelude::written().iter();
+    let functions = functions.map(move |page| of_written(page, forms.get(page.name)));
+    catalogue::entries().map(of_entry).chain(functions)
+}
+
+fn of_written(page: &'static Written, form: Option<&Form>) -> Item {
+    let spellings = written::spellings(page);
+    let head = form.map_or("", |form| &form.head);
+    let arguments = page.arguments.iter();
+    Item {
+        signature: format!("{}{head}", spellings[0]),
+        spellings,
+        synonyms: page.synonyms.clone(),
+        topic: page.topic,
+        about: page.about.clone(),
+        arguments: arguments
+            .map(|(name, about)| ((*name).into(), about.clone()))
+            .collect(),
+        facts: vec![
+            ("formula", page.formula.clone()),
+            ("holds for", page.validity.clone()),
+            ("source", page.source.clone()),
+            (
+                "written",
+                form.map_or_else(String::new, |form| form.whole.clone()),
+            ),
+        ],
+    }
+    .with_example(&page.example)
 }
 
 fn of_entry(entry: &'static Entry) -> Item {
@@ -68,6 +99,27 @@ impl Item {
     /// The first sentence of what it is.
     pub(super) fn summary(&self) -> String {
         crate::output::one_line(&self.about)
+    }
+
+    /// The signature without the units of the arguments, for lists.
+    pub(super) fn brief(&self) -> String {
+        let mut brief = String::new();
+        let (mut round, mut square) = (0, 0);
+        for letter in self.signature.chars() {
+            match letter {
+                '(' => round += 1,
+                ')' => round -= 1,
+                '[' if round > 0 => square += 1,
+                _ => {}
+            }
+            if square == 0 {
+                brief.push(letter);
+            } else if letter == ']' {
+                square -= 1;
+                brief.truncate(brief.trim_end().len());
+            }
+        }
+        brief
     }
 
     /// Its page.

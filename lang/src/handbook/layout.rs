@@ -103,7 +103,7 @@ impl<'a> Setter<'a> {
                 "",
                 self.look.paint(Tone::Faint, label)
             ));
-            let start = start.min(self.room() / 3).max(INDENT + 2);
+            let start = start.min(3 * INDENT);
             (start, look::wrap(text, self.room() - start))
         } else {
             let label = self.look.paint(Tone::Faint, &look::pad(label, column));

@@ -76,7 +76,7 @@ pub(super) fn set(setter: &mut Setter, question: &str) -> Result<(), String> {
     let asked = question.to_lowercase();
     let words: Vec<&str> = words_of(&asked).collect();
     let mut found = candidates(&asked, &words);
-    found.sort_by(|one, other| other.score.cmp(&one.score));
+    found.sort_by_key(|one| std::cmp::Reverse(one.score));
     found.dedup_by(|one, other| one.name == other.name);
     let shown = look::harmless(&crate::output::one_line(question));
     let shown = look::Look::PLAIN.clip(&shown, 40);
@@ -187,15 +187,10 @@ fn matching(asked: &str, words: &[&str], names: &[&str], synonyms: &[&str], abou
         return 90;
     }
     let mut score = 0;
-    let about = about.to_lowercase();
     for word in words {
-        let begins = |text: &str| words_of_lower(text).any(|known| known.starts_with(*word));
-        if names.iter().any(|name| begins(name)) || synonyms.iter().any(|synonym| begins(synonym)) {
+        if names.iter().chain(synonyms).any(|known| begins(known, word)) {
             score += 10;
-        } else if about
-            .split(|letter: char| !letter.is_alphanumeric())
-            .any(|known| known.starts_with(*word))
-        {
+        } else if begins(about, word) {
             score += 4;
         } else {
             return 0;
@@ -204,14 +199,19 @@ fn matching(asked: &str, words: &[&str], names: &[&str], synonyms: &[&str], abou
     score
 }
 
-fn words_of_lower(text: &str) -> impl Iterator<Item = String> {
-    let lower = text.to_lowercase();
-    let words: Vec<String> = lower
+/// Whether a word of the text begins so; a short one has to be the same.
+fn begins(text: &str, word: &str) -> bool {
+    let whole = word.chars().count() <= 3;
+    let fits = |known: &str| {
+        if whole {
+            known == word
+        } else {
+            known.starts_with(word)
+        }
+    };
+    text.to_lowercase()
         .split(|letter: char| !letter.is_alphanumeric())
-        .filter(|word| !word.is_empty())
-        .map(String::from)
-        .collect();
-    words.into_iter()
+        .any(fits)
 }
 
 /// More than 0 for a name that differs by a slip of typing or by case alone.
