@@ -6,7 +6,7 @@
 
 use crate::dimension::{Dimension, Exponent, NUMBER};
 use crate::model::{DomainError, Model};
-use crate::{constants, mathematics};
+use crate::{constants, cosmology, mathematics};
 use num_rational::Ratio;
 
 /// What is known about one name.
@@ -191,7 +191,10 @@ impl Entry {
 
 /// All entries, in the order of the handbook.
 pub fn entries() -> impl Iterator<Item = &'static Entry> {
-    let chapters = constants::ENTRIES.into_iter().chain(mathematics::ENTRIES);
+    let chapters = constants::ENTRIES
+        .into_iter()
+        .chain(mathematics::ENTRIES)
+        .chain(cosmology::ENTRIES);
     chapters.flatten()
 }
 

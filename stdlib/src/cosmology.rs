@@ -13,7 +13,9 @@ mod geometry;
 pub mod horizon;
 pub mod inverse;
 mod template;
+pub mod values;
 
+use crate::catalogue::Entry;
 use crate::constants::values::{GIGAYEAR, MEGAPARSEC, SPEED_OF_LIGHT};
 use crate::model::history::{Edge, Kind};
 use crate::model::{DomainError, Model};
@@ -24,6 +26,15 @@ pub use uom::si::f64::{
     VolumeRate,
 };
 use uom::si::{length::meter, time::second};
+
+/// The entries of these chapters, in the order of the handbook.
+pub static ENTRIES: [&[Entry]; 5] = [
+    values::ENTRIES,
+    background::ENTRIES,
+    future::ENTRIES,
+    distance::ENTRIES,
+    horizon::ENTRIES,
+];
 
 /// What a function of this library returns.
 pub type Found<T> = Result<T, DomainError>;
@@ -123,20 +134,20 @@ impl Model {
     /// Comoving distance to z, negative in the future.
     #[inline]
     pub(crate) fn light(&self, z: Redshift) -> Found<f64> {
-        self.from_today(Kind::Light, z)
+        self.before_today(Kind::Light, z)
     }
 
     /// An integral from today to z.
     #[inline]
-    pub(crate) fn from_today(&self, kind: Kind, z: Redshift) -> Found<f64> {
+    pub(crate) fn before_today(&self, kind: Kind, z: Redshift) -> Found<f64> {
         let history = self.history()?;
         history.admit(z.stretch())?;
         let track = history.track(self.expansion(), kind)?;
-        Ok(track.from_today(self.expansion(), z.get()))
+        Ok(track.before_today(self.expansion(), z.get()))
     }
 
     /// An integral from the big bang to z.
-    pub(crate) fn from_beginning(&self, kind: Kind, z: Redshift) -> Found<f64> {
+    pub(crate) fn since_beginning(&self, kind: Kind, z: Redshift) -> Found<f64> {
         let history = self.history()?;
         match history.past {
             Edge::Turn(s) => {
@@ -155,7 +166,7 @@ impl Model {
         }
         history.admit(z.stretch())?;
         let track = history.track(self.expansion(), kind)?;
-        track.from_beginning(self.expansion(), z.get()).ok_or_else(|| {
+        track.since_beginning(self.expansion(), z.get()).ok_or_else(|| {
             undefined(match kind {
                 Kind::Light => {
                     "this model has no particle horizon: light has crossed any distance since its beginning"
@@ -178,7 +189,7 @@ impl Model {
                 // What follows the turnaround mirrors what came before it.
                 let back = track.to_end(self.expansion(), 0.0);
                 let collapse = match history.past {
-                    Edge::Open => track.from_beginning(self.expansion(), 0.0),
+                    Edge::Open => track.since_beginning(self.expansion(), 0.0),
                     Edge::Turn(_) | Edge::Undefined(_) => None,
                 };
                 Ok(rest

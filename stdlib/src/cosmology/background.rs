@@ -67,7 +67,7 @@ impl Model {
     /// # Source
     /// Hogg 1999, astro-ph/9905116, sec. 10.
     pub fn age(&self, z: Redshift) -> Found<Time> {
-        Ok(time(self.from_beginning(Kind::Time, z)? * self.hubble_time_s()))
+        Ok(time(self.since_beginning(Kind::Time, z)? * self.hubble_time_s()))
     }
 
     /// Time between z and today, `∫₀ᶻ dz′/((1+z′) H)`; negative for z < 0.
@@ -78,7 +78,7 @@ impl Model {
     /// # Source
     /// Hogg 1999, astro-ph/9905116, eq. 30.
     pub fn lookback_time(&self, z: Redshift) -> Found<Time> {
-        Ok(time(self.from_today(Kind::Time, z)? * self.hubble_time_s()))
+        Ok(time(self.before_today(Kind::Time, z)? * self.hubble_time_s()))
     }
 
     /// Conformal time since the big bang, `∫_z^∞ dz′/H` (a = 1 today).
@@ -86,7 +86,7 @@ impl Model {
     /// # Errors
     /// Where it is infinite, or there was no big bang.
     pub fn conformal_time(&self, z: Redshift) -> Found<Time> {
-        Ok(time(self.from_beginning(Kind::Light, z)? * self.hubble_time_s()))
+        Ok(time(self.since_beginning(Kind::Light, z)? * self.hubble_time_s()))
     }
 
     /// c times the lookback time.
@@ -94,7 +94,7 @@ impl Model {
     /// # Errors
     /// Where the model never had this redshift.
     pub fn light_travel_distance(&self, z: Redshift) -> Found<Length> {
-        Ok(length(self.from_today(Kind::Time, z)? * self.hubble_length_m()))
+        Ok(length(self.before_today(Kind::Time, z)? * self.hubble_length_m()))
     }
 
     /// `a = 1/(1+z)`.

@@ -31,7 +31,7 @@ impl Model {
             }
         }
         if let Some(end) = self.rip()? {
-            let now = self.from_beginning(Kind::Time, Redshift::TODAY)? * self.hubble_time_s();
+            let now = self.since_beginning(Kind::Time, Redshift::TODAY)? * self.hubble_time_s();
             if cosmic_time.value >= now + end {
                 return Err(undefined(format_args!(
                     "this model is torn apart {} after its big bang",
@@ -63,7 +63,7 @@ impl Model {
     /// Where it never does, or there was no big bang.
     pub fn turnaround_time(&self) -> Found<Time> {
         self.turnaround()?;
-        let before = self.from_beginning(Kind::Time, Redshift::TODAY)?;
+        let before = self.since_beginning(Kind::Time, Redshift::TODAY)?;
         let track = self.track(Kind::Time)?;
         let after = track.to_end(self.expansion(), 0.0);
         let after = after.ok_or_else(|| undefined("this model takes for ever to turn round"))?;

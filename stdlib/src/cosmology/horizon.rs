@@ -26,7 +26,7 @@ impl Model {
     /// # Source
     /// Davis & Lineweaver 2004, PASA 21, 97, appendix A.
     pub fn particle_horizon(&self, z: Redshift) -> Found<Length> {
-        let chi = self.from_beginning(Kind::Light, z)?;
+        let chi = self.since_beginning(Kind::Light, z)?;
         Ok(length(finite(chi * self.hubble_length_m() / z.stretch())?))
     }
 
@@ -36,7 +36,7 @@ impl Model {
     /// As [`Model::particle_horizon`].
     pub fn particle_horizon_comoving(&self, z: Redshift) -> Found<Length> {
         Ok(length(
-            self.from_beginning(Kind::Light, z)? * self.hubble_length_m(),
+            self.since_beginning(Kind::Light, z)? * self.hubble_length_m(),
         ))
     }
 
@@ -47,7 +47,7 @@ impl Model {
     /// # Errors
     /// Where there was no big bang.
     pub fn particle_horizon_limit(&self) -> Found<Length> {
-        let past = self.from_beginning(Kind::Light, Redshift::TODAY)?;
+        let past = self.since_beginning(Kind::Light, Redshift::TODAY)?;
         let future = self
             .to_end(Kind::Light, Redshift::TODAY)?
             .unwrap_or(f64::INFINITY);
@@ -110,7 +110,7 @@ impl Model {
     pub fn light_cone_peak(&self) -> Found<Redshift> {
         let track = self.track(Kind::Light)?;
         let slope =
-            |z: f64| (1.0 + z) - self.expansion().rate(1.0 + z) * track.from_today(self.expansion(), z);
+            |z: f64| (1.0 + z) - self.expansion().rate(1.0 + z) * track.before_today(self.expansion(), z);
         self.outward(1.090_507_732_665_257_7, &slope).ok_or_else(|| {
             undefined("nothing that is seen receded as fast as light when it emitted in this model")
         })
@@ -153,7 +153,7 @@ impl Model {
     /// # Errors
     /// For z < 0, and where there was no big bang.
     pub fn arrival_time(&self, z: Redshift) -> Found<Time> {
-        let today = self.from_beginning(Kind::Time, Redshift::TODAY)?;
+        let today = self.since_beginning(Kind::Time, Redshift::TODAY)?;
         Ok(time(self.hubble_time_s() * today) + self.arrival_wait(z)?)
     }
 
@@ -178,7 +178,7 @@ impl Model {
     /// turnaround if need be.
     fn wait_for(&self, chi: f64) -> Found<f64> {
         if let Some(z) = self.at_integral(Kind::Light, -chi)? {
-            return Ok(-self.from_today(Kind::Time, z)?);
+            return Ok(-self.before_today(Kind::Time, z)?);
         }
         let too_late = || undefined("it arrives so late that its redshift is no longer a number");
         let (light, clock) = (self.track(Kind::Light)?, self.track(Kind::Time)?);
@@ -191,7 +191,7 @@ impl Model {
         let mirrored = self
             .at_integral(Kind::Light, chi - 2.0 * half)?
             .ok_or_else(too_late)?;
-        Ok(2.0 * clock_half + self.from_today(Kind::Time, mirrored)?)
+        Ok(2.0 * clock_half + self.before_today(Kind::Time, mirrored)?)
     }
 
     /// The latest cosmic time, by its own clock, at which we shall ever see
@@ -237,7 +237,7 @@ impl Model {
     /// # Errors
     /// Where there is no particle horizon.
     pub fn particle_horizon_growth(&self, z: Redshift) -> Found<VolumeRate> {
-        self.sweep(self.from_beginning(Kind::Light, z)?, z)
+        self.sweep(self.since_beginning(Kind::Light, z)?, z)
     }
 
     /// Comoving volume that leaves the event horizon per unit of cosmic time
@@ -292,7 +292,7 @@ impl Model {
     pub fn observable_fraction(&self) -> Found<f64> {
         self.closed()?;
         let curvature = self.budget().curvature;
-        let chi = self.from_beginning(Kind::Light, Redshift::TODAY)?;
+        let chi = self.since_beginning(Kind::Light, Redshift::TODAY)?;
         Ok(volume(chi, curvature) / total_volume(curvature))
     }
 

@@ -22,7 +22,7 @@ impl Model {
     /// # Errors
     /// For times before the big bang or after the last expansion.
     pub fn redshift_of_age(&self, age: Time) -> Found<Redshift> {
-        let today = self.from_beginning(Kind::Time, Redshift::TODAY)?;
+        let today = self.since_beginning(Kind::Time, Redshift::TODAY)?;
         let wanted = age.value / self.hubble_time_s();
         if wanted <= 0.0 || wanted.is_nan() {
             return Err(undefined(format_args!(
@@ -31,7 +31,7 @@ impl Model {
             )));
         }
         let track = self.track(Kind::Time)?;
-        let value = |z: f64| track.from_beginning(self.expansion(), z).unwrap_or(f64::NAN) - wanted;
+        let value = |z: f64| track.since_beginning(self.expansion(), z).unwrap_or(f64::NAN) - wanted;
         let found = if wanted <= today {
             self.outward(STEP, &value)
         } else {
@@ -69,7 +69,7 @@ impl Model {
         let wanted = positive(distance, "luminosity distance")? / self.hubble_length_m();
         let (track, curvature) = (self.track(Kind::Light)?, self.budget().curvature);
         let value =
-            |z: f64| area_radius(track.from_today(self.expansion(), z), curvature) * (1.0 + z) - wanted;
+            |z: f64| area_radius(track.before_today(self.expansion(), z), curvature) * (1.0 + z) - wanted;
         let found = self.outward(STEP, &value);
         found.ok_or_else(|| {
             self.never(format_args!(
@@ -135,7 +135,7 @@ impl Model {
     pub fn angular_diameter_peak(&self) -> Found<Redshift> {
         let (track, curvature) = (self.track(Kind::Light)?, self.budget().curvature);
         let slope = |z: f64| {
-            let chi = track.from_today(self.expansion(), z);
+            let chi = track.before_today(self.expansion(), z);
             let rate = self.expansion().rate(1.0 + z);
             (1.0 + z) * area_radius_slope(chi, curvature) - rate * area_radius(chi, curvature)
         };
@@ -144,7 +144,7 @@ impl Model {
     }
 
     fn angular(&self, track: &Track, z: f64) -> f64 {
-        area_radius(track.from_today(self.expansion(), z), self.budget().curvature) / (1.0 + z)
+        area_radius(track.before_today(self.expansion(), z), self.budget().curvature) / (1.0 + z)
     }
 
     fn no_such_angular_distance(
@@ -173,7 +173,7 @@ impl Model {
         if wanted == 0.0 {
             return Ok(Some(Redshift::TODAY));
         }
-        let value = |z: f64| track.from_today(self.expansion(), z) - wanted;
+        let value = |z: f64| track.before_today(self.expansion(), z) - wanted;
         let step = if wanted > 0.0 { STEP } else { 1.0 / STEP };
         Ok(self.outward(step, &value))
     }

@@ -236,7 +236,7 @@ pub fn expansion(budget: &Budget, parameters: &[(ParameterId, Setting)]) -> Resu
     let w0 = values.number(id::W0).unwrap_or(-1.0);
     let wa = values.number(id::WA).unwrap_or(0.0);
     let state = match function {
-        Some(function) => State::Given(Given::new(function)),
+        Some(function) => State::Given(Box::new(Given::new(function))),
         None if wa != 0.0 => State::Linear(w0, wa),
         None if w0 == -1.0 => State::Lambda,
         None => State::Constant(w0),

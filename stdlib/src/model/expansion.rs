@@ -43,7 +43,7 @@ pub enum State {
     /// 2003, PRL 90, 091301.
     Linear(f64, f64),
     /// A function of z given by the user.
-    Given(Given),
+    Given(Box<Given>),
 }
 
 /// A function w(z) with what is tabulated of it on first use.

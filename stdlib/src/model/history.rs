@@ -302,15 +302,15 @@ impl Track {
 
     /// From today to z: positive into the past.
     #[inline]
-    pub fn from_today(&self, expansion: &Expansion, z: f64) -> f64 {
+    pub fn before_today(&self, expansion: &Expansion, z: f64) -> f64 {
         match self.table.from_one(z) {
             Some(value) => value,
-            None => self.from_today_afar(expansion, 1.0 + z),
+            None => self.before_today_afar(expansion, 1.0 + z),
         }
     }
 
     #[cold]
-    fn from_today_afar(&self, expansion: &Expansion, s: f64) -> f64 {
+    fn before_today_afar(&self, expansion: &Expansion, s: f64) -> f64 {
         let (lower, upper) = self.table.ends();
         let (to_lower, to_upper) = self.table.around_one();
         if s > upper {
@@ -322,16 +322,16 @@ impl Track {
 
     /// From the beginning to z; `None` if that is infinite or undefined.
     #[inline]
-    pub fn from_beginning(&self, expansion: &Expansion, z: f64) -> Option<f64> {
+    pub fn since_beginning(&self, expansion: &Expansion, z: f64) -> Option<f64> {
         let above = self.above?;
         match self.table.to_upper(z) {
             Some(value) => Some(value + above),
-            None => Some(self.from_beginning_afar(expansion, 1.0 + z, above)),
+            None => Some(self.since_beginning_afar(expansion, 1.0 + z, above)),
         }
     }
 
     #[cold]
-    fn from_beginning_afar(&self, expansion: &Expansion, s: f64, above: f64) -> f64 {
+    fn since_beginning_afar(&self, expansion: &Expansion, s: f64, above: f64) -> f64 {
         let (lower, upper) = self.table.ends();
         if s < lower {
             let (to_lower, to_upper) = self.table.around_one();
