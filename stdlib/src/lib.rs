@@ -4,6 +4,7 @@
 //! Nothing here knows the syntax of the language. `lang` reads the
 //! [`catalogue`], which describes every name, and calls the functions in it.
 
+pub mod bibliography;
 pub mod catalogue;
 pub mod constants;
 pub mod cosmology;

@@ -17,7 +17,8 @@
 //! The first lines say what it is. A line `key: …` is one of the fields
 //! `symbol`, `words` (under which `help` also finds it), `formula`, `valid`,
 //! `source`, `example`, or describes the argument of that name. A line indented
-//! by more than one space continues the field above it. A blank line after a
+//! by more than one space continues the field above it. Papers are cited from
+//! memory; “(from memory)” marks a figure that rests on it. A blank line after a
 //! comment keeps it from belonging to what follows.
 
 use crate::catalogue::Topic;

@@ -10,7 +10,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         synonyms: &["circle", "circumference"],
         about: "Ratio of a circle's circumference to its diameter; it leaves the angle open.",
         formula: "π = 3.14159265358979…",
-        source: "ISO 80000-2:2019, 2-5.7",
+        source: "ISO 80000-2:2019",
         example: "pi is 3.14159265358979",
         definition: Definition::Constant(std::f64::consts::PI, 0.0),
         ..FUNCTION
@@ -23,7 +23,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: Type::power(0, 1, 2),
         formula: "√x",
         validity: "x ≥ 0",
-        source: "ISO 80000-2:2019, 2-10.6",
+        source: "ISO 80000-2:2019",
         example: "sqrt(2) is 1.41421356",
         definition: Definition::Function(square_root),
         ..FUNCTION
@@ -35,7 +35,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", A, "any value")],
         result: Type::power(0, 1, 3),
         formula: "∛x",
-        source: "ISO 80000-2:2019, 2-10.7",
+        source: "ISO 80000-2:2019",
         example: "cbrt(-8 Mpc^3) is -2 Mpc",
         definition: Definition::Function(cube_root),
         ..FUNCTION
@@ -47,7 +47,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", A, "any value")],
         result: A,
         formula: "|x|",
-        source: "ISO 80000-2:2019, 2-10.16",
+        source: "ISO 80000-2:2019",
         example: "abs(-3 km/s) is 3 km/s",
         definition: Definition::Function(absolute),
         ..FUNCTION
@@ -60,7 +60,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", A, "any value")],
         result: NUMBER_TYPE,
         formula: "sgn x",
-        source: "ISO 80000-2:2019, 2-10.15",
+        source: "ISO 80000-2:2019",
         example: "sign(-3 km/s) is -1",
         definition: Definition::Function(sign),
         ..FUNCTION
@@ -87,7 +87,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "⌊x⌋",
-        source: "ISO 80000-2:2019, 2-10.17",
+        source: "ISO 80000-2:2019",
         example: "floor(-2.4) is -3",
         definition: Definition::Function(floor),
         ..FUNCTION
@@ -100,7 +100,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "⌈x⌉",
-        source: "ISO 80000-2:2019, 2-10.18",
+        source: "ISO 80000-2:2019",
         example: "ceil(2.4) is 3",
         definition: Definition::Function(ceiling),
         ..FUNCTION
@@ -124,7 +124,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "eˣ",
-        source: "DLMF 4.2.19",
+        source: "DLMF 4.2",
         example: "exp(1) is 2.718281828459045",
         definition: Definition::Function(exponential),
         ..FUNCTION
@@ -137,7 +137,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: NUMBER_TYPE,
         formula: "ln x",
         validity: "x > 0",
-        source: "DLMF 4.2.2",
+        source: "DLMF 4.2",
         example: "ln(10) is 2.302585092994046",
         definition: Definition::Function(natural_logarithm),
         ..FUNCTION
@@ -150,7 +150,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: NUMBER_TYPE,
         formula: "lg x",
         validity: "x > 0",
-        source: "DLMF 4.2.15",
+        source: "DLMF 4.2",
         example: "log10(2) is 0.30102999566",
         definition: Definition::Function(decimal_logarithm),
         ..FUNCTION
@@ -163,7 +163,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: NUMBER_TYPE,
         formula: "lb x",
         validity: "x > 0",
-        source: "ISO 80000-2:2019, 2-13.6",
+        source: "ISO 80000-2:2019",
         example: "log2(1024) is 10",
         definition: Definition::Function(binary_logarithm),
         ..FUNCTION
@@ -175,7 +175,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "eˣ − 1",
-        source: "DLMF 4.2.19",
+        source: "DLMF 4.2",
         example: "expm1(1e-10) is 1.00000000005e-10",
         definition: Definition::Function(exponential_less_one),
         ..FUNCTION
@@ -188,7 +188,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: NUMBER_TYPE,
         formula: "ln(1 + x)",
         validity: "x > −1",
-        source: "DLMF 4.6.1",
+        source: "DLMF 4.6",
         example: "log1p(1e-10) is 9.9999999995e-11",
         definition: Definition::Function(logarithm_of_one_more),
         ..FUNCTION
@@ -200,7 +200,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", ANGLE_TYPE, "an angle")],
         result: NUMBER_TYPE,
         formula: "sin x",
-        source: "DLMF 4.14.1",
+        source: "DLMF 4.14",
         example: "sin(30 deg) is 0.5",
         definition: Definition::Function(sine),
         ..FUNCTION
@@ -212,7 +212,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", ANGLE_TYPE, "an angle")],
         result: NUMBER_TYPE,
         formula: "cos x",
-        source: "DLMF 4.14.2",
+        source: "DLMF 4.14",
         example: "cos(60 deg) is 0.5",
         definition: Definition::Function(cosine),
         ..FUNCTION
@@ -224,7 +224,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", ANGLE_TYPE, "an angle")],
         result: NUMBER_TYPE,
         formula: "tan x",
-        source: "DLMF 4.14.4",
+        source: "DLMF 4.14",
         example: "tan(45 deg) is 1.000",
         definition: Definition::Function(tangent),
         ..FUNCTION
@@ -239,7 +239,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "rad",
         formula: "arcsin x",
         validity: "-1 ≤ x ≤ 1",
-        source: "DLMF 4.23.16",
+        source: "DLMF 4.23",
         example: "asin(0.5) is 30.00 deg",
         definition: Definition::Function(arc_sine),
         ..FUNCTION
@@ -254,7 +254,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "rad",
         formula: "arccos x",
         validity: "-1 ≤ x ≤ 1",
-        source: "DLMF 4.23.17",
+        source: "DLMF 4.23",
         example: "acos(0.5) is 60.00 deg",
         definition: Definition::Function(arc_cosine),
         ..FUNCTION
@@ -268,7 +268,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: ANGLE_TYPE,
         usual_unit: "rad",
         formula: "arctan x",
-        source: "DLMF 4.23.3",
+        source: "DLMF 4.23",
         example: "atan(1) is 45.00 deg",
         definition: Definition::Function(arc_tangent),
         ..FUNCTION
@@ -285,7 +285,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "rad",
         formula: "arg(x + i y)",
         validity: "not x = y = 0",
-        source: "DLMF 4.23.27",
+        source: "DLMF 4.23",
         example: "atan2(1 kpc, -1 kpc) is 135.0 deg",
         definition: Definition::Function(direction),
         ..FUNCTION
@@ -297,7 +297,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "(eˣ − e⁻ˣ)/2",
-        source: "DLMF 4.28.1",
+        source: "DLMF 4.28",
         example: "sinh(1) is 1.1752011936",
         definition: Definition::Function(hyperbolic_sine),
         ..FUNCTION
@@ -309,7 +309,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "(eˣ + e⁻ˣ)/2",
-        source: "DLMF 4.28.2",
+        source: "DLMF 4.28",
         example: "cosh(1) is 1.5430806348",
         definition: Definition::Function(hyperbolic_cosine),
         ..FUNCTION
@@ -321,7 +321,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "sinh x/cosh x",
-        source: "DLMF 4.28.4",
+        source: "DLMF 4.28",
         example: "tanh(1) is 0.7615941560",
         definition: Definition::Function(hyperbolic_tangent),
         ..FUNCTION
@@ -334,7 +334,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         arguments: &[argument("x", NUMBER_TYPE, "a number")],
         result: NUMBER_TYPE,
         formula: "ln(x + √(x² + 1))",
-        source: "DLMF 4.37.16",
+        source: "DLMF 4.37",
         example: "asinh(1) is 0.8813735870",
         definition: Definition::Function(area_sine),
         ..FUNCTION
@@ -348,7 +348,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: NUMBER_TYPE,
         formula: "ln(x + √(x² − 1))",
         validity: "x ≥ 1",
-        source: "DLMF 4.37.19",
+        source: "DLMF 4.37",
         example: "acosh(2) is 1.3169578969",
         definition: Definition::Function(area_cosine),
         ..FUNCTION
@@ -362,7 +362,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: NUMBER_TYPE,
         formula: "½ ln((1 + x)/(1 − x))",
         validity: "-1 < x < 1",
-        source: "DLMF 4.37.24",
+        source: "DLMF 4.37",
         example: "atanh(0.5) is 0.5493061443",
         definition: Definition::Function(area_tangent),
         ..FUNCTION
