@@ -143,6 +143,7 @@ impl Checker {
         self.check_source(id, outside);
         self.including.pop();
         self.refuse_left_over();
+        self.warn_of_unstated_model();
         self.warn_of_unused(id, before.1);
         self.sort_diagnostics(before.0);
     }

@@ -1,7 +1,7 @@
 //! Dimensions in words and in field notation.
 
 use super::form::{self, FIRST_BOUND, FIRST_TALLY, Form, Key};
-use super::infer::{COMOVING, LITTLE_H};
+use super::infer::COMOVING;
 use super::typed::Typed;
 use super::{BindingId, Checker, Meaning};
 use num_rational::Ratio;
@@ -89,7 +89,8 @@ impl Checker {
     #[must_use]
     pub fn unit_text(&self, form: &Form) -> String {
         let rest = form.library_part();
-        let mut text = words::usual_unit(&rest).map_or_else(|| base_units(&rest), ToOwned::to_owned);
+        let usual = words::usual_unit(&rest).filter(|unit| *unit != "1");
+        let mut text = usual.map_or_else(|| base_units(&rest), ToOwned::to_owned);
         for (key, power) in form.parts() {
             if let Some(counted) = self.counted(key, power) {
                 text = if text.is_empty() { counted } else { format!("{counted} {text}") };
@@ -162,9 +163,4 @@ pub fn join_signature(name: &str, arguments: Option<Vec<(SmolStr, String, bool)>
         text = format!("{text}({})", each.collect::<Vec<_>>().join(", "));
     }
     if unit.is_empty() { text } else { format!("{text} [{unit}]") }
-}
-
-/// Whether a form carries a power of h.
-pub(super) fn carries_h(form: &Form) -> bool {
-    !form::is_zero(form.exponent(LITTLE_H))
 }

@@ -284,6 +284,13 @@ pub(super) fn wrong_given(span: Span, name: &str, words: &[String; 2]) -> Diagno
     Diagnostic::error("wrong-given", message, span, &words[1])
 }
 
+pub(super) fn model_not_stated(used: Span) -> Diagnostic {
+    let message = format!("the results rest on a model, and the sheet assumes none: {} is taken", crate::lower::DEFAULT_MODEL);
+    let top = Span { start: 0, end: 0 };
+    Diagnostic::warning("model-not-stated", message, used, "needs a model")
+        .fix("say which", top, format!("assume {}\n", crate::lower::DEFAULT_MODEL))
+}
+
 pub(super) fn no_such_given(span: Span, name: &str, bound: bool) -> Diagnostic {
     let message = format!("the sheet has no input {name}");
     let error = Diagnostic::error("wrong-given", message, span, "given for nothing");

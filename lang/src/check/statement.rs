@@ -2,7 +2,6 @@
 
 use super::environment::{self, Function, Meaning, Place, Space, Table, UserUnit, Value};
 use super::form::Form;
-use super::infer::COMOVING;
 use super::typed::{Generaliser, Kind, Measure, Scheme, Typed};
 use super::unify::Sort;
 use super::{BindingId, Checker, Head, Local, Outside, call, error, library};
@@ -661,17 +660,27 @@ impl Checker {
         }
     }
 
+    /// Warns where a sheet has results that rest on a model and names none:
+    /// nobody could reproduce them once the default changes.
+    pub(super) fn warn_of_unstated_model(&mut self) {
+        let stated = self.at_prompt || self.environment.assumed.is_some();
+        let is_output = |task: &Task| match task {
+            Task::Show(show) => show.result,
+            Task::Claim(_) | Task::Table(_) => true,
+            Task::Help(_) => false,
+        };
+        let Some(used) = self.environment.model_used.filter(|_| !stated) else { return };
+        if self.tasks.iter().any(is_output) {
+            let warning = error::model_not_stated(used.span);
+            self.diagnostics.push((usize::from(used.source), warning));
+        }
+    }
+
     /// Says once that uncertainties are not carried yet.
     pub(super) fn warn_of_uncertainty(&mut self, span: Span) {
         if !std::mem::replace(&mut self.told_of_uncertainty, true) {
             self.report(error::uncertainty_not_carried(span));
         }
-    }
-
-    /// The frame that a comoving length has.
-    #[must_use]
-    pub(super) fn is_comoving(form: &Form) -> bool {
-        *form.exponent(COMOVING).numer() != 0
     }
 }
 
