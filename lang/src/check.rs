@@ -209,9 +209,20 @@ impl Checker {
         if let Some(measure) = unit.filter(|measure| is_unit_for(measure, &form)) {
             return (measure.text.to_string(), measure.factor);
         }
-        let text = self.unit_text(&form);
+        let text = self.unit_text(&without_open_angle(form));
         let factor = crate::parser::parse_unit(&text).map_or(1.0, |unit| self.size_of(&unit));
         (text, factor)
+    }
+
+    /// What a value is, as it is shown in that unit: an angle that no unit
+    /// names goes without saying.
+    #[must_use]
+    pub fn shown_form(&self, face: &Face) -> Form {
+        let form = self.settled(&face.form);
+        match &face.unit {
+            Some(measure) if is_unit_for(measure, &form) => form,
+            Some(_) | None => without_open_angle(form),
+        }
     }
 
     fn check_source(&mut self, id: u16, outside: &dyn Outside) {
@@ -281,6 +292,10 @@ impl Checker {
         let form = self.unifier.settled(form);
         if form.is_open() { form.without(|key| key >= form::FIRST_BOUND) } else { form }
     }
+}
+
+fn without_open_angle(form: Form) -> Form {
+    if form.has_other_dimension() { form.without(|key| key == infer::ANGLE) } else { form }
 }
 
 /// Whether values of a dimension can be shown in a unit; the frame is said

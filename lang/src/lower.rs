@@ -68,6 +68,8 @@ struct Scope {
     in_library: bool,
     /// Where to point instead, inside a function of the library.
     blame: Option<(u16, Span)>,
+    /// The table whose columns stand bare, inside `only`.
+    table: Option<BindingId>,
 }
 
 /// The translation of a checked sheet.
@@ -102,6 +104,7 @@ impl<'c> Lowering<'c> {
                 context: 0,
                 in_library: false,
                 blame: None,
+                table: None,
             },
             locals: Vec::new(),
             contexts: Vec::new(),
@@ -207,6 +210,7 @@ impl<'c> Lowering<'c> {
             context,
             in_library,
             blame: self.scope.blame.filter(|_| in_library),
+            table: None,
         };
         let outer = (std::mem::replace(&mut self.scope, scope), std::mem::replace(&mut self.level, level));
         let node = match &value.instead {

@@ -151,9 +151,10 @@ impl Checker {
 
     /// How something will be shown, once the whole sheet is known.
     pub(super) fn keep_face(&mut self, typed: Typed) -> Face {
-        let mut generaliser = super::typed::Generaliser::default();
-        let afresh = |sort| matches!(sort, super::unify::Sort::Along(_));
-        let form = generaliser.bind(&mut self.unifier, &typed.form, afresh);
+        let form = self.unifier.settled_afresh(&typed.form);
+        for key in form.unknowns().collect::<Vec<_>>() {
+            self.unifier.keep(key);
+        }
         Face { form, unit: typed.unit, truth: typed.kind == Kind::Truth }
     }
 }

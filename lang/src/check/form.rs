@@ -23,7 +23,7 @@ pub const FIRST_UNKNOWN: Key = 1 << 21;
 /// Stands for a power too large for its type.
 pub const UNBOUNDED: Exponent = Ratio::new_raw(i32::MAX, 1);
 /// Powers in a sheet stay below this; nothing in the field comes near.
-pub const MAX_POWER: i32 = 1000;
+pub const MAX_POWER: i32 = 100_000;
 
 /// The power zero.
 pub const ZERO: Exponent = Ratio::new_raw(0, 1);

@@ -278,6 +278,9 @@ impl Checker {
     fn infer_power(&mut self, base: &Expr, exponent: &Expr) -> Typed {
         let a = self.infer_quantity(base);
         if let Some(power) = written_rational(exponent) {
+            if bare_literal(base).is_some() {
+                return Typed::quantity(Form::number());
+            }
             return self.raise(&a, power, exponent.span);
         }
         let b = self.infer_quantity(exponent);

@@ -2,7 +2,7 @@
 
 use super::environment::{self, Function, Meaning, Place, Space, Table, UserUnit, Value};
 use super::form::Form;
-use super::typed::{Generaliser, Kind, Measure, Scheme, Typed};
+use super::typed::{Generaliser, Instance, Kind, Measure, Scheme, Typed};
 use super::unify::Sort;
 use super::{BindingId, Checker, Head, Local, Outside, call, error, library};
 use crate::ast::{self, BinaryOp, Binding, Bracket, Definition as Written, Expr, ExprKind, Name, Parameter, Plot, Read, Statement, StatementKind, Text};
@@ -153,7 +153,9 @@ impl Checker {
             StatementKind::Explain(_) => self.not_yet(span, "explain"),
             StatementKind::Broken => {}
         }
-        self.unifier.forget(mark);
+        if self.record.is_none() {
+            self.unifier.forget(&mark);
+        }
     }
 
     fn not_yet(&mut self, span: Span, word: &str) {
@@ -364,11 +366,16 @@ impl Checker {
         self.environment.binding(id).used.set(true);
         let Meaning::Value(value) = &self.environment.binding(id).meaning else { return };
         let about = about.or_else(|| value.definition.about.as_ref().map(|text| text.node.clone()));
-        let typed = as_typed.unwrap_or_else(|| value.scheme.typed.clone());
+        let value = Arc::clone(value);
+        let typed = as_typed.unwrap_or_else(|| {
+            let instance = Instance::new(&mut self.unifier, &value.scheme.bound);
+            let typed = value.scheme.typed.clone();
+            Typed { form: instance.form(&typed.form), ..typed }
+        });
         if typed.is_unknown() {
             return;
         }
-        let face = Face { form: typed.form, unit: typed.unit, truth: typed.kind == Kind::Truth };
+        let face = self.keep_face(typed);
         self.tasks.push(Task::Show(Show { result: true, name, output: Output::Binding(id), face, about, place }));
     }
 
@@ -506,7 +513,7 @@ impl Checker {
     fn check_selection(&mut self, only: &Expr, columns: &[environment::Column]) {
         let outer = self.locals.len();
         for column in columns {
-            let instance = super::typed::Instance::new(&mut self.unifier, &column.scheme.bound);
+            let instance = Instance::new(&mut self.unifier, &column.scheme.bound);
             let typed = column.scheme.typed.clone();
             let form = instance.form(&typed.form);
             let typed = Typed { form, ..typed };

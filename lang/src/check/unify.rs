@@ -19,6 +19,7 @@
 //! usual bookkeeping of let-polymorphism; Kennedy 1996, “Relational
 //! parametricity and units of measure”, has the group case).
 
+use super::infer::COMOVING;
 use super::form::{FIRST_BOUND, FIRST_UNKNOWN, Form, Key, divide, is_zero};
 
 /// What an unknown may stand for.
@@ -45,6 +46,12 @@ struct Unknown {
     sort: Sort,
     level: u8,
     value: Option<Form>,
+}
+
+/// How many unknowns there were at some time, and what was touched by then.
+pub struct Mark {
+    unknowns: usize,
+    touched: bool,
 }
 
 /// Two forms that cannot be the same: what is left of their quotient.
@@ -75,17 +82,17 @@ impl Unifier {
         Form::of(key)
     }
 
-    /// The number of unknowns, and a clean record of what is touched.
-    pub fn mark(&mut self) -> usize {
-        self.touched = false;
-        self.unknowns.len()
+    /// The unknowns there are, and a clean record of what is touched.
+    pub fn mark(&mut self) -> Mark {
+        Mark { unknowns: self.unknowns.len(), touched: std::mem::take(&mut self.touched) }
     }
 
     /// Forgets the unknowns since `mark`, if none of the sheet's rests on them.
-    pub fn forget(&mut self, mark: usize) {
+    pub fn forget(&mut self, mark: &Mark) {
         if !self.touched {
-            self.unknowns.truncate(mark);
+            self.unknowns.truncate(mark.unknowns);
         }
+        self.touched |= mark.touched;
     }
 
     /// The sort of an unknown.
@@ -192,13 +199,30 @@ impl Unifier {
         self.unknowns[(key - FIRST_UNKNOWN) as usize].value = Some(value);
     }
 
-    /// Takes every power of open unknowns as zero but those of `Any`: what
-    /// a value is when nothing more is asked of it.
+    /// What a value is when nothing more is asked of it: an open frame is
+    /// proper in the end, and other open powers are zero.
     #[must_use]
     pub fn settled(&self, form: &Form) -> Form {
         let resolved = self.resolve(form);
-        let open = |key: Key| key >= FIRST_UNKNOWN && self.sort(key) != Sort::Any;
-        if resolved.is_open() { resolved.without(open) } else { resolved }
+        if !resolved.is_open() {
+            return resolved;
+        }
+        let along = |key: Key| if key >= FIRST_UNKNOWN { self.sort(key).along() } else { None };
+        let frame = resolved.unknowns().any(|key| along(key) == Some(COMOVING));
+        resolved.without(|key| along(key).is_some() || (frame && key == COMOVING))
+    }
+
+    /// The same, but what later statements may still settle is left open.
+    #[must_use]
+    pub fn settled_afresh(&self, form: &Form) -> Form {
+        let resolved = self.resolve(form);
+        if !resolved.is_open() {
+            return resolved;
+        }
+        let sort = |key: Key| (key >= FIRST_UNKNOWN).then(|| self.sort(key));
+        let frame = resolved.unknowns().any(|key| sort(key) == Some(Sort::Along(COMOVING)));
+        let of_frame = |key: Key| key == COMOVING || sort(key).and_then(Sort::along) == Some(COMOVING);
+        resolved.without(|key| matches!(sort(key), Some(Sort::Along(_))) || (frame && of_frame(key)))
     }
 
     /// Whether two forms could be the same, with nothing changed.
@@ -225,9 +249,7 @@ impl Unifier {
 mod tests {
     use super::*;
     use num_rational::Ratio;
-    use zij_stdlib::dimension::{Generator, LENGTH, TIME};
-
-    const COMOVING: Key = Generator::Comoving as Key;
+    use zij_stdlib::dimension::{LENGTH, TIME};
 
     #[test]
     fn a_square_root_is_solved_for() {

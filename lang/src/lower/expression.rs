@@ -110,6 +110,9 @@ impl Lowering<'_> {
         if let Some(at) = self.local(name) {
             return self.import(at);
         }
+        if let Some(node) = self.bare_column(name, span) {
+            return node;
+        }
         if let Some(id) = self.find(self.spaces()[0], name) {
             let at = self.value_of(id);
             return self.import(at);
@@ -237,7 +240,7 @@ impl Lowering<'_> {
             .collect();
         let blame = self.scope.blame.or(in_library.then_some((self.scope.source, span)));
         let scope =
-            Scope { limit: id, source, base: self.locals.len(), in_library, blame, context: self.scope.context };
+            Scope { limit: id, source, base: self.locals.len(), in_library, blame, table: None, context: self.scope.context };
         let outer = std::mem::replace(&mut self.scope, scope);
         let depth = self.locals.len();
         self.calls += 1;
@@ -326,7 +329,11 @@ impl Lowering<'_> {
         let node = match &table.read.only {
             None => raw,
             Some(only) => {
-                let condition = self.selection(id, &table, only);
+                let source = self.checker.environment.binding(id).place.source;
+                let condition = self.within(id, source, |this| {
+                    this.scope.table = Some(id);
+                    this.lower(only)
+                });
                 self.emit(Op::Filter(raw, condition), span)
             }
         };
@@ -334,18 +341,12 @@ impl Lowering<'_> {
         node
     }
 
-    fn selection(&mut self, id: BindingId, table: &crate::check::environment::Table, only: &Expr) -> NodeId {
-        let source = self.checker.environment.binding(id).place.source;
-        self.within(id, source, |this| {
-            let outer = this.locals.len();
-            for (place, column) in table.columns.iter().enumerate() {
-                let node = this.raw_column(id, place, only.span);
-                this.locals.push((column.name.clone(), At { level: 0, node }));
-            }
-            let node = this.lower(only);
-            this.locals.truncate(outer);
-            node
-        })
+    /// A column that stands bare inside `only`.
+    fn bare_column(&mut self, name: &str, span: Span) -> Option<NodeId> {
+        let id = self.scope.table?;
+        let Meaning::Table(table) = &self.checker.environment.binding(id).meaning else { return None };
+        let place = table.columns.iter().position(|column| column.name == name)?;
+        Some(self.raw_column(id, place, span))
     }
 
     fn raw_column(&mut self, id: BindingId, place: usize, span: Span) -> NodeId {

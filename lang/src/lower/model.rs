@@ -105,6 +105,7 @@ impl Lowering<'_> {
             context: 0,
             in_library: false,
             blame: None,
+            table: None,
         };
         let outer = std::mem::replace(&mut self.scope, scope);
         self.settle(&mut given, &model.written.settings);

@@ -139,7 +139,7 @@ impl Run<'_> {
     fn show(&mut self, show: &Show, node: NodeId) -> Shown {
         let numbers = self.numbers(node, &show.face);
         let (unit, _) = self.checker.unit_of(&show.face.form, show.face.unit.as_ref());
-        let form = self.checker.settled(&show.face.form);
+        let form = self.checker.shown_form(&show.face);
         let dimension = if show.face.truth { "a truth value".into() } else { self.checker.in_words(&form) };
         Shown {
             name: show.name.to_string(),
