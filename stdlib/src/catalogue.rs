@@ -74,7 +74,8 @@ pub struct Argument {
     pub name: &'static str,
     /// Its dimension.
     pub kind: Type,
-    /// Its value in SI when left out.
+    /// Its value in SI when left out. NaN: it is not there then, and the
+    /// function is called with the arguments before it alone.
     pub default: Option<f64>,
     /// What it is, with its range.
     pub about: &'static str,

@@ -169,9 +169,11 @@ impl Lowering<'_> {
         let placed = in_order(&names, arguments);
         let mut nodes = Vec::with_capacity(placed.len());
         for (place, value) in placed.into_iter().enumerate() {
-            nodes.push(match value {
-                Some(value) => self.settled_argument(value),
-                None => self.constant(entry.arguments[place].default.unwrap_or(f64::NAN), span),
+            let default = entry.arguments[place].default;
+            nodes.push(match (value, default) {
+                (Some(value), _) => self.settled_argument(value),
+                (None, Some(default)) if default.is_nan() => break,
+                (None, default) => self.constant(default.unwrap_or(f64::NAN), span),
             });
         }
         let model = match entry.definition {

@@ -39,7 +39,7 @@ const SPHERE_SR: f64 = 4.0 * std::f64::consts::PI;
 
 fn angular_diameter(model: &Model, x: &[f64]) -> Found<f64> {
     let z1 = redshift(x, 0)?;
-    let distance = if x[1].is_nan() {
+    let distance = if x.len() < 2 {
         model.angular_diameter_distance(z1)?
     } else {
         model.angular_diameter_distance_between(z1, redshift(x, 1)?)?
@@ -49,7 +49,7 @@ fn angular_diameter(model: &Model, x: &[f64]) -> Found<f64> {
 
 fn volume(model: &Model, x: &[f64]) -> Found<f64> {
     let z1 = redshift(x, 0)?;
-    let volume = if x[1].is_nan() {
+    let volume = if x.len() < 2 {
         model.comoving_volume(z1)?
     } else {
         model.comoving_volume_between(z1, redshift(x, 1)?)?
