@@ -171,7 +171,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "W/m^2",
         formula: "f₀ = L₀/(4π (10 pc)²)",
         source: B2,
-        example: "f_0bol is 2.518021002e-8 W/m^2",
+        example: "f_0bol is 2.518021e-8 W/m^2",
         definition: Definition::Constant(ZERO_POINT_IRRADIANCE, 0.0),
         ..CONSTANT
     },
@@ -185,7 +185,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "Jy",
         formula: "m_AB = −2.5 log₁₀(f_ν/3631 Jy)",
         source: "Oke & Gunn 1983, ApJ 266, 713",
-        example: "-2.5*log10(f_AB/(1 erg/s/cm^2/Hz)) is -48.60",
+        example: "-2.5*log10(f_AB/(1 erg/s/cm^2/Hz)) is 48.60",
         definition: Definition::Constant(AB_ZERO_POINT, 0.0),
         ..CONSTANT
     },

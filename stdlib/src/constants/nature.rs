@@ -75,7 +75,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "J s",
         formula: "ħ = h_P/(2π)",
         source: CODATA,
-        example: "hbar is 1.054571817e-34 J s",
+        example: "hbar is 1.0545718e-34 J s",
         definition: Definition::Constant(REDUCED_PLANCK, 0.0),
         ..CONSTANT
     },
@@ -183,7 +183,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "GHz/K",
         formula: "ν_peak = b_ν T, b_ν = 2.821439… k_B/h_P",
         source: CODATA,
-        example: "b_ν is 5.878925757e10 Hz/K",
+        example: "b_ν is 58.789258 GHz/K",
         definition: Definition::Constant(WIEN_FREQUENCY, 0.0),
         ..CONSTANT
     },
@@ -210,7 +210,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "1/m",
         formula: "R_inf = α_fs² m_e c/(2 h_P)",
         source: CODATA,
-        example: "h_P * c * R_inf [eV] is 13.605693122990(15) eV",
+        example: "h_P * c * R_inf [eV] is 13.60569312299 eV",
         definition: Definition::Constant(RYDBERG, RYDBERG_UNCERTAINTY),
         ..CONSTANT
     },
@@ -234,7 +234,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: Type::of(MASS),
         usual_unit: "kg",
         source: CODATA,
-        example: "m_e [keV via c] is 510.99895069(16) keV",
+        example: "m_e [keV via c] is 510.9989507 keV",
         definition: Definition::Constant(ELECTRON_MASS, ELECTRON_MASS_UNCERTAINTY),
         ..CONSTANT
     },
@@ -245,7 +245,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: Type::of(MASS),
         usual_unit: "kg",
         source: CODATA,
-        example: "m_p [MeV via c] is 938.27208943(29) MeV",
+        example: "m_p [MeV via c] is 938.2720894 MeV",
         definition: Definition::Constant(PROTON_MASS, PROTON_MASS_UNCERTAINTY),
         ..CONSTANT
     },
@@ -256,7 +256,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         result: Type::of(MASS),
         usual_unit: "kg",
         source: CODATA,
-        example: "m_n [MeV via c] is 939.56542194(48) MeV",
+        example: "m_n [MeV via c] is 939.565422 MeV",
         definition: Definition::Constant(NEUTRON_MASS, NEUTRON_MASS_UNCERTAINTY),
         ..CONSTANT
     },
@@ -270,7 +270,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "kg",
         formula: "m_u = m(¹²C)/12",
         source: CODATA,
-        example: "m_u [MeV via c] is 931.49410372(29) MeV",
+        example: "m_u [MeV via c] is 931.4941037 MeV",
         definition: Definition::Constant(ATOMIC_MASS, ATOMIC_MASS_UNCERTAINTY),
         ..CONSTANT
     },
@@ -379,7 +379,7 @@ pub(super) static ENTRIES: &[Entry] = &[
         usual_unit: "s",
         formula: "t_P = √(ħ G/c⁵)",
         source: CODATA,
-        example: "t_P is 5.391247(60)e-44 s",
+        example: "t_P is 5.39125e-44 s",
         definition: Definition::Constant(PLANCK_TIME, PLANCK_TIME_UNCERTAINTY),
         ..CONSTANT
     },
