@@ -89,7 +89,7 @@ impl Row {
             .map_err(|error| format!("{}: {error}", self.expect))?;
         let report = subject::run(&self.sheet);
         if let Some(name) = &self.missing {
-            let lacks = |one: &Diagnostic| one.is_error() && one.message.contains(&format!("`{name}`"));
+            let lacks = |one: &Diagnostic| one.is_error() && one.message.ends_with(&format!(" {name}"));
             let refused = subject::own_diagnostics(&report).iter().any(lacks);
             let why = || format!("`{name}` is marked missing, yet\n{}", subject::said(&report));
             return if refused { Ok(()) } else { Err(why()) };

@@ -168,16 +168,11 @@ fn a_closed_pipe_ends_quietly() {
     let output = child.wait_with_output().expect("the program ends");
     let said = stderr(&output);
     assert!(said.lines().count() <= 1 && !said.contains("panic"), "{said}");
-    if !subject::pending() {
-        assert_ne!(status(&output), 0);
-    }
+    assert_ne!(status(&output), 0);
 }
 
 #[test]
 fn an_output_that_cannot_be_written_leaves_no_part_of_it() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let path = sheet(&folder, "result d = 2 m\n");
     let nowhere = folder.path().join("none/out.txt").display().to_string();
@@ -220,9 +215,6 @@ fn an_output_that_cannot_be_written_leaves_no_part_of_it() {
 
 #[test]
 fn a_sheet_with_an_error_writes_no_file() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let path = sheet(
         &folder,
@@ -238,9 +230,6 @@ fn a_sheet_with_an_error_writes_no_file() {
 
 #[test]
 fn a_table_is_written_beside_its_sheet() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let path = sheet(&folder, "table \"rows.csv\" x = 0 .. 1 in 4 steps: x, 2 m * x\n");
     let output = run(&[&path]);
@@ -255,9 +244,6 @@ fn a_table_is_written_beside_its_sheet() {
 
 #[test]
 fn a_sheet_reads_and_writes_nothing_outside_its_folder() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     fs::create_dir(folder.path().join("sheets")).expect("a folder");
     fs::write(folder.path().join("secret.csv"), "a\n1\n").expect("written");
@@ -279,9 +265,6 @@ fn a_sheet_reads_and_writes_nothing_outside_its_folder() {
 
 #[test]
 fn statuses_tell_how_a_sheet_ended() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     for (text, expected) in [
         ("claim \"a\": 1 km is 1000 m within 1%\n", 0),
@@ -312,9 +295,6 @@ fn statuses_tell_how_a_sheet_ended() {
 
 #[test]
 fn check_evaluates_nothing() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let path = sheet(
         &folder,
@@ -334,9 +314,6 @@ fn check_evaluates_nothing() {
 
 #[test]
 fn one_line_and_standard_input_are_sheets_too() {
-    if subject::pending() {
-        return;
-    }
     let output = run(&["-e", "2 km [m]"]);
     assert_eq!(status(&output), 0, "{}", stderr(&output));
     assert!(stdout(&output).contains("2000"), "{}", stdout(&output));
@@ -348,9 +325,6 @@ fn one_line_and_standard_input_are_sheets_too() {
 
 #[test]
 fn a_given_is_overridden_within_its_dimension() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let path = sheet(
         &folder,
@@ -382,9 +356,6 @@ fn a_given_is_overridden_within_its_dimension() {
 
 #[test]
 fn the_form_of_the_output_is_chosen() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let path = sheet(&folder, "result d = 2 km \"how far\"\n");
     let text = run(&[&path]);
@@ -405,9 +376,6 @@ fn the_form_of_the_output_is_chosen() {
 
 #[test]
 fn json_has_the_keys_of_the_language_page() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let text = "\
 model flat70 = flat with H0 = 70 km/s/Mpc, Ωm = 0.3
@@ -466,16 +434,13 @@ unused = 2
     assert_eq!(value["claims"][0]["verdict"], "disagrees");
     assert_eq!(keys(&value["tables"][0]), ["columns", "rows"]);
     assert_eq!(keys(&value["tables"][0]["columns"][1]), ["name", "unit"]);
-    assert_eq!(value["tables"][0]["rows"][2], serde_json::json!([1.0, 2.0]));
+    assert_eq!(value["tables"][0]["rows"][2], serde_json::json!([1.0, 1.0, 2.0]));
     assert_eq!(value["warnings"][0]["code"], "unused-value");
     assert_eq!(value["errors"], serde_json::json!([]));
 }
 
 #[test]
 fn json_of_a_wrong_sheet_has_its_errors_and_no_values() {
-    if subject::pending() {
-        return;
-    }
     let folder = folder();
     let path = sheet(&folder, "result Ω = 2 km\nresult d = Ω + 1 s\n");
     let output = run(&[&path, "--as", "json"]);
@@ -509,9 +474,6 @@ fn json_of_a_wrong_sheet_has_its_errors_and_no_values() {
 
 #[test]
 fn a_number_in_json_reads_back_the_same() {
-    if subject::pending() {
-        return;
-    }
     let output = run(&["--as", "json", "-e", "result x = 1/3\nresult y = 0.1 + 0.2"]);
     let value = json(&output);
     assert_eq!(value["results"][0]["value"].as_f64(), Some(1.0 / 3.0));

@@ -311,7 +311,7 @@ fn table_lines(table: &TableReport, look: &Look) -> String {
         if !text.is_empty() {
             text.push('\n');
         }
-        let lines = columns.first().map_or(0, Vec::len);
+        let lines = columns.iter().map(Vec::len).max().unwrap_or(0);
         for line in 0..lines {
             text.push_str(&row_line(&columns, &group, line, look));
         }
@@ -324,7 +324,8 @@ fn table_lines(table: &TableReport, look: &Look) -> String {
 
 /// One line of a table; the first two are its head.
 fn row_line(columns: &[Vec<String>], group: &[usize], line: usize, look: &Look) -> String {
-    let cells: Vec<_> = group.iter().map(|index| columns[*index][line].as_str()).collect();
+    let cell = |index: &usize| columns[*index].get(line).map_or("", String::as_str);
+    let cells: Vec<_> = group.iter().map(cell).collect();
     let row = cells.join("  ");
     let row = row.trim_end();
     if line < 2 {

@@ -63,6 +63,9 @@ struct Term {
     /// Plain numbers were added: such a sum may stand for a power of (1+z), and
     /// leaves the frame open.
     open: bool,
+    /// The highest power of a length met on the way: beyond some, a volume of
+    /// gigaparsecs is too large for a number of the SI.
+    reach: i32,
 }
 
 /// A sheet with some definitions and one expression.
@@ -114,7 +117,10 @@ impl Case {
         if !self.term.open {
             let mut halves = self.term.halves;
             (halves[0], halves[3]) = (halves[0] + 2, halves[3] - 2);
-            wrong.push(unit(self.base, halves));
+            // A unit without lengths is plain, and shows any frame.
+            if halves[0] != 0 || halves[3] != 0 {
+                wrong.push(unit(self.base, halves));
+            }
         }
         wrong
     }
@@ -124,10 +130,9 @@ impl Case {
         let mut halves = self.term.halves;
         halves[1] += 2;
         let text = &self.term.text;
-        format!(
-            "{DEFINITIONS}answer = ({text}) + 2 {}\nresult answer\n",
-            unit(self.base, halves)
-        )
+        let Base { definitions, .. } = self.base;
+        let other = literal(self.base, halves, 2.0).text;
+        format!("{DEFINITIONS}{definitions}answer = ({text}) + {other}\nresult answer\n")
     }
 }
 
@@ -168,12 +173,14 @@ fn literal(base: &Base, halves: Halves, number: f64) -> Term {
 /// A value that a unit's factor has rounded, and its conversion once more.
 fn known(text: String, halves: Halves, value: f64) -> Term {
     let slack = 4.0 * f64::EPSILON * value.abs();
+    let reach = reach(halves);
     Term {
         text,
         halves,
         value,
         slack,
         open: false,
+        reach,
     }
 }
 
@@ -207,13 +214,20 @@ fn leaf(base: &'static Base) -> impl Strategy<Value = Term> {
 fn combine(parts: &[&Term], text: String, halves: Halves, value: f64, brought: f64) -> Term {
     let slack = brought + f64::EPSILON * value.abs();
     let open = parts.iter().any(|part| part.open);
+    let met = parts.iter().map(|part| part.reach);
+    let reach = met.fold(reach(halves), i32::max);
     Term {
         text,
         halves,
         value,
         slack,
         open,
+        reach,
     }
+}
+
+fn reach(halves: Halves) -> i32 {
+    halves[0].abs() + halves[3].abs()
 }
 
 /// A sum of numbers, whatever their frame.
@@ -352,6 +366,7 @@ pub fn dimensioned(base: &'static Base) -> impl Strategy<Value = Case> {
         (1e-100..1e100).contains(&size)
             && term.slack < 1e-9 * size
             && term.halves.iter().all(|half| half.abs() <= 60)
+            && term.reach <= 14
     };
     term.prop_filter("a usual size", usual)
         .prop_map(move |term| Case { term, base })

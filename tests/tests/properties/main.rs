@@ -113,7 +113,6 @@ proptest! {
 
     #[test]
     fn inferred_dimensions_are_those_of_pencil_and_paper(case in cases()) {
-        if subject::pending() { return Ok(()); }
         let sheet = case.sheet(&case.unit());
         let report = subject::run(&sheet);
         prop_assert!(!report.has_errors(), "{sheet}\n{}", subject::said(&report));
@@ -126,7 +125,6 @@ proptest! {
 
     #[test]
     fn a_wrong_unit_is_found_out(case in cases()) {
-        if subject::pending() { return Ok(()); }
         for wrong in case.wrong_units() {
             let sheet = case.sheet(&wrong);
             let report = subject::run(&sheet);
@@ -136,7 +134,6 @@ proptest! {
 
     #[test]
     fn a_wrong_sum_is_found_out(case in cases()) {
-        if subject::pending() { return Ok(()); }
         let sheet = case.wrong_sum();
         let report = subject::run(&sheet);
         let errors = report.diagnostics.iter().filter(|(_, one)| one.is_error());
@@ -147,9 +144,6 @@ proptest! {
 
 #[test]
 fn units_convert_there_and_back() {
-    if subject::pending() {
-        return;
-    }
     let units = subject::units();
     let mut checked = 0;
     for one in &units {
@@ -175,9 +169,6 @@ fn units_convert_there_and_back() {
 
 #[test]
 fn threads_change_no_digit() {
-    if subject::pending() {
-        return;
-    }
     let sheet = "\
 x = 0.001 .. 20 in 100000 steps
 f(y) = sqrt(0.3*(1 + y)^3 + 0.7) * exp(-y) + sin(y * 1 rad)
