@@ -20,7 +20,12 @@ const AWAITED: [&str; 8] = [
 ];
 
 /// Codes without a page today, likewise.
-const PAGELESS: [&str; 4] = ["bad-unit", "claim-comparison", "claim-without-is", "undivided-range"];
+const PAGELESS: [&str; 4] = [
+    "bad-unit",
+    "claim-comparison",
+    "claim-without-is",
+    "undivided-range",
+];
 
 /// The files that the pages speak of.
 fn folder() -> Folder {
