@@ -65,6 +65,7 @@ pub static CHAPTERS: &[Chapter] = &[
     chapter("spectra.zij", Topic::Light, include_str!("prelude/spectra.zij")),
     chapter("gas.zij", Topic::Light, include_str!("prelude/gas.zij")),
     chapter("sirens.zij", Topic::Light, include_str!("prelude/sirens.zij")),
+    chapter("survey.zij", Topic::Structure, include_str!("prelude/survey.zij")),
     chapter("lensing.zij", Topic::Lensing, include_str!("prelude/lensing.zij")),
     chapter(
         "dynamics.zij",

@@ -35,15 +35,6 @@ fn base(name: &str) -> &'static Base {
     BASES.iter().find(|base| base.name == name).expect("a known base")
 }
 
-/// A model from numbers in SI.
-fn build(name: &str, numbers: &[(&str, f64)]) -> Model {
-    let settings: Vec<_> = numbers
-        .iter()
-        .map(|(name, value)| (named(name).expect("a parameter"), Setting::Number(*value)))
-        .collect();
-    model::build(base(name), &settings).expect("a model")
-}
-
 fn z(value: f64) -> Redshift {
     Redshift::new(value).expect("a redshift")
 }

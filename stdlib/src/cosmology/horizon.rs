@@ -6,6 +6,7 @@ mod entries;
 pub use entries::ENTRIES;
 
 use super::geometry::{area_radius, total_volume, volume};
+use super::inverse::excess;
 use super::{
     Found, Length, Redshift, Time, Velocity, Volume, VolumeRate, finite, in_gyr, length, time, undefined,
 };
@@ -109,8 +110,10 @@ impl Model {
     /// Where the light cone has no tip.
     pub fn light_cone_peak(&self) -> Found<Redshift> {
         let track = self.track(Kind::Light)?;
-        let slope =
-            |z: f64| (1.0 + z) - self.expansion().rate(1.0 + z) * track.before_today(self.expansion(), z);
+        let slope = |z: f64| {
+            let chi = track.before_today(self.expansion(), z);
+            excess(1.0 + z, self.expansion().rate(1.0 + z) * chi)
+        };
         self.outward(1.090_507_732_665_257_7, &slope).ok_or_else(|| {
             undefined("nothing that is seen receded as fast as light when it emitted in this model")
         })

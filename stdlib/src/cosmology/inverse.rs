@@ -137,7 +137,10 @@ impl Model {
         let slope = |z: f64| {
             let chi = track.before_today(self.expansion(), z);
             let rate = self.expansion().rate(1.0 + z);
-            (1.0 + z) * area_radius_slope(chi, curvature) - rate * area_radius(chi, curvature)
+            excess(
+                (1.0 + z) * area_radius_slope(chi, curvature),
+                rate * area_radius(chi, curvature),
+            )
         };
         let found = self.outward(STEP, &slope);
         found.ok_or_else(|| undefined("the angular-diameter distance of this model only grows with z"))
@@ -233,6 +236,18 @@ impl Model {
             }
         };
         undefined(format_args!("no redshift has {what} in this model: {span}"))
+    }
+}
+
+/// `a − b` relative to their sizes, above zero where it drowns in rounding:
+/// a distance that only approaches its limit has no maximum.
+pub(super) fn excess(a: f64, b: f64) -> f64 {
+    const ROUNDING: f64 = 1e-13;
+    let difference = (a - b) / (a.abs() + b.abs());
+    if difference.abs() < ROUNDING {
+        ROUNDING
+    } else {
+        difference
     }
 }
 

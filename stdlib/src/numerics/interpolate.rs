@@ -30,6 +30,8 @@ const MAX_DEPTH: u32 = 40;
 /// Pieces a table may have: smooth histories need 500, a kink 40 more. A
 /// function that wants more than this is noise.
 const MAX_PIECES: usize = 40_000;
+/// Values below this are not resolved: what is tabulated is of order one.
+const NEGLIGIBLE: f64 = 1e-40;
 /// Size of the last coefficients, relative to the largest, that passes.
 const TOLERANCE: f64 = 4e-15;
 
@@ -355,7 +357,7 @@ fn split(
     let chebyshev = interpolate(lower, upper, f)?;
     let largest = chebyshev.iter().fold(0.0_f64, |most, c| most.max(c.abs()));
     let tail = chebyshev[DEGREE].abs() + 0.1 * chebyshev[DEGREE - 1].abs();
-    if tail * weight <= TOLERANCE * largest || depth == 0 {
+    if tail * weight <= TOLERANCE * largest.max(NEGLIGIBLE) || depth == 0 {
         pieces.push(Piece {
             lower,
             upper,
@@ -379,7 +381,7 @@ fn interpolate(lower: f64, upper: f64, f: &mut impl FnMut(f64) -> f64) -> Result
         let s = match place {
             0 => upper,
             DEGREE => lower,
-            _ => middle + half * cosine(place),
+            _ => middle + half * COSINES[1][place],
         };
         *value = f(s);
         if !value.is_finite() {
@@ -389,9 +391,12 @@ fn interpolate(lower: f64, upper: f64, f: &mut impl FnMut(f64) -> f64) -> Result
     values[0] *= 0.5;
     values[DEGREE] *= 0.5;
     let mut coefficients = [0.0; NODES];
-    for (order, coefficient) in coefficients.iter_mut().enumerate() {
-        let terms = values.iter().enumerate();
-        let sum: f64 = terms.map(|(place, value)| value * cosine(order * place)).sum();
+    for (row, coefficient) in COSINES.iter().zip(&mut coefficients) {
+        let sum: f64 = row
+            .iter()
+            .zip(&values)
+            .map(|(cosine, value)| cosine * value)
+            .sum();
         *coefficient = 2.0 / DEGREE as f64 * sum;
     }
     coefficients[0] *= 0.5;
@@ -399,8 +404,10 @@ fn interpolate(lower: f64, upper: f64, f: &mut impl FnMut(f64) -> f64) -> Result
     Ok(coefficients)
 }
 
-/// cos(π k/10), to the last digit.
-fn cosine(k: usize) -> f64 {
+/// cos(π j k/10), to the last digit, for j and k from 0 to 10.
+static COSINES: [[f64; NODES]; NODES] = cosines();
+
+const fn cosines() -> [[f64; NODES]; NODES] {
     const QUARTER: [f64; 6] = [
         1.0,
         0.951_056_516_295_153_5,
@@ -409,9 +416,20 @@ fn cosine(k: usize) -> f64 {
         0.309_016_994_374_947_45,
         0.0,
     ];
-    let k = k % (2 * DEGREE);
-    let k = if k > DEGREE { 2 * DEGREE - k } else { k };
-    if k <= 5 { QUARTER[k] } else { -QUARTER[DEGREE - k] }
+    let mut table = [[0.0; NODES]; NODES];
+    let mut place = 0;
+    while place < NODES * NODES {
+        let (row, column) = (place / NODES, place % NODES);
+        let angle = row * column % (2 * DEGREE);
+        let angle = if angle > DEGREE { 2 * DEGREE - angle } else { angle };
+        table[row][column] = if angle <= 5 {
+            QUARTER[angle]
+        } else {
+            -QUARTER[DEGREE - angle]
+        };
+        place += 1;
+    }
+    table
 }
 
 /// The fit as a polynomial in t, its middle and its scale.
