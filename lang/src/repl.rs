@@ -105,9 +105,16 @@ impl Prompt {
 
     /// The model and a therefore sign.
     fn prompt(&self) -> String {
-        let sign = if output_look().unicode { "∴" } else { ":." };
+        let look = output_look();
+        let sign = if look.unicode { "∴" } else { ":." };
         let model = self.session.borrow().model_name();
-        format!("{} {sign} ", look::harmless(&model))
+        let model = look::harmless(&model);
+        let model = if look.unicode {
+            model
+        } else {
+            model.replace('…', "...")
+        };
+        format!("{} {sign} ", look.clip(&model, look.width / 2))
     }
 
     fn answer(&mut self, entry: &Entry) -> Result<Next, Failure> {
@@ -130,7 +137,8 @@ impl Prompt {
     }
 
     fn is_bound(&self, name: &str) -> bool {
-        self.session.borrow().names().iter().any(|(own, ..)| own == name)
+        let names = self.session.borrow().names();
+        names.iter().any(|(own, ..)| bare(own) == name)
     }
 
     /// Text in the language.
@@ -160,7 +168,8 @@ impl Prompt {
 
     /// What has been bound, with dimensions.
     fn names(&self) -> Result<(), Failure> {
-        let names = self.session.borrow().names();
+        let mut names = self.session.borrow().names();
+        names.retain(|(name, ..)| name != "that");
         if names.is_empty() {
             return cli::print("no names yet: a line like z = 1.1 binds one\n");
         }
@@ -182,7 +191,8 @@ impl Prompt {
     }
 
     fn keep(&mut self, path: &str) -> Result<(), Failure> {
-        match self.exchange.keep(path) {
+        let model = self.session.borrow().model_name();
+        match self.exchange.keep(path, &model) {
             Ok(told) => cli::print(&format!("{told}\n")),
             Err(reason) => {
                 self.refuse(&reason);
@@ -196,7 +206,7 @@ impl Prompt {
         let look = output_look();
         let own = self.session.borrow().names();
         if let [name] = topic
-            && let Some(own) = own.iter().find(|(own, ..)| own == name)
+            && let Some(own) = own.iter().find(|(own, ..)| bare(own) == name)
         {
             return cli::print(&name_lines(std::slice::from_ref(own), &look));
         }
@@ -221,7 +231,14 @@ impl Prompt {
 fn greeting(look: &look::Look) -> String {
     let version = env!("CARGO_PKG_VERSION");
     let text = format!("zij {version}; help opens the handbook, leave ends");
-    format!("{}\n", look.paint(Tone::Faint, &text))
+    let lines = look::wrap(&text, look.width);
+    let faint = lines.iter().map(|line| look.paint(Tone::Faint, line) + "\n");
+    faint.collect()
+}
+
+/// The name alone, of a signature too.
+fn bare(name: &str) -> &str {
+    name.split(['(', ' ']).next().unwrap_or(name)
 }
 
 /// A name, what it is, and how it was bound.
@@ -233,11 +250,11 @@ fn name_lines(names: &[(String, String, String)], look: &look::Look) -> String {
             .max()
             .unwrap_or(0)
     };
-    let name_width = widest(|(name, ..)| name).min(24);
+    let name_width = widest(|(name, ..)| bare(name)).min(24);
     let dimension_width = widest(|(_, dimension, _)| dimension).min(28);
     let mut text = String::new();
     for (name, dimension, source) in names {
-        let name = look::pad(name, name_width);
+        let name = look::pad(bare(name), name_width);
         let dimension = look.paint(Tone::Faint, &look::pad(dimension, dimension_width));
         let source = crate::output::one_line(&look::harmless(source));
         let line = format!("{name}  {dimension}  {source}");

@@ -5,6 +5,7 @@ use super::layout::Setter;
 use super::written::{self, Form};
 use crate::parser;
 use zij_stdlib::catalogue::{self, Argument, Definition, Entry, Topic, Type};
+use zij_stdlib::dimension::Generator;
 use zij_stdlib::model::{BASES, Base, PARAMETERS, Parameter, Takes};
 use zij_stdlib::prelude::{self, Written};
 use zij_stdlib::units::{self, Found, Prefixes, Unit};
@@ -139,7 +140,7 @@ impl Item {
 
 /// `D_C(z) [cMpc]`, `age(z = 0) [Gyr]`, `c [km/s]`
 fn signature(entry: &Entry, shown: &str) -> String {
-    let unit = match entry.usual_unit {
+    let unit = match usual_unit(entry) {
         "" => String::new(),
         unit => format!(" [{unit}]"),
     };
@@ -148,6 +149,13 @@ fn signature(entry: &Entry, shown: &str) -> String {
     }
     let arguments: Vec<_> = entry.arguments.iter().map(parameter).collect();
     format!("{shown}({}){unit}", arguments.join(", "))
+}
+
+/// The unit it is quoted in, with the frame that it has.
+fn usual_unit(entry: &Entry) -> &'static str {
+    let comoving = *entry.result.dimension.exponent(Generator::Comoving).numer() != 0;
+    let framed = words::usual_unit(&entry.result.dimension).filter(|_| comoving);
+    framed.unwrap_or(entry.usual_unit)
 }
 
 fn parameter(argument: &Argument) -> String {

@@ -3,6 +3,7 @@
 
 use crate::output::look::{self, Look, Tone};
 use crate::token::{self, Token, TokenKind};
+use std::borrow::Cow;
 
 /// Columns of the widest text: longer lines are hard to read.
 const MAX_WIDTH: usize = 96;
@@ -29,10 +30,15 @@ impl<'a> Setter<'a> {
 
     /// The page.
     pub(super) fn finish(self) -> String {
-        if self.look.unicode {
-            self.text
+        self.text
+    }
+
+    /// The text in characters that are shown.
+    fn shown<'t>(&self, text: &'t str) -> Cow<'t, str> {
+        if self.look.unicode || text.is_ascii() {
+            Cow::Borrowed(text)
         } else {
-            ascii(&self.text)
+            Cow::Owned(ascii(text))
         }
     }
 
@@ -49,6 +55,7 @@ impl<'a> Setter<'a> {
 
     /// What the page is about, and beside it what else that is.
     pub(super) fn head(&mut self, title: &str, aside: &str) {
+        let (title, aside) = (&*self.shown(title), &*self.shown(aside));
         let strong = self.look.paint(Tone::Strong, title);
         let faint = self.look.paint(Tone::Faint, aside);
         if aside.is_empty() {
@@ -70,7 +77,7 @@ impl<'a> Setter<'a> {
     }
 
     fn lines(&mut self, text: &str, indent: usize, tone: Option<Tone>) {
-        for line in look::wrap(text, self.room() - indent) {
+        for line in look::wrap(&self.shown(text), self.room() - indent) {
             let line = match tone {
                 Some(tone) => self.look.paint(tone, &line),
                 None => line,
@@ -83,14 +90,14 @@ impl<'a> Setter<'a> {
     pub(super) fn rows<L: AsRef<str>, T: AsRef<str>>(&mut self, rows: &[(L, T)]) {
         let rows: Vec<_> = rows
             .iter()
-            .map(|(label, text)| (label.as_ref(), text.as_ref()))
+            .map(|(label, text)| (self.shown(label.as_ref()), self.shown(text.as_ref())))
             .filter(|(_, text)| !text.is_empty())
             .collect();
         let fits = |width: &usize| *width <= MAX_LABEL.min(self.room() / 2);
         let widths = rows.iter().map(|(label, _)| look::width(label)).filter(fits);
         let column = widths.max().unwrap_or(0);
         for (label, text) in rows {
-            self.row(label, text, column);
+            self.row(&label, &text, column);
         }
     }
 
@@ -120,7 +127,7 @@ impl<'a> Setter<'a> {
 
     /// Lines of a sheet in their colours, as they stand.
     pub(super) fn sheet(&mut self, sheet: &str) {
-        for line in sheet.lines() {
+        for line in self.shown(sheet).lines() {
             let line = painted(line, self.look);
             self.text.push_str(&format!("{:1$}{line}\n", "", 2 * INDENT));
         }

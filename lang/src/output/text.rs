@@ -4,7 +4,9 @@
 
 use super::look::{self, Look, Tone};
 use super::{frame_word, number, one_line};
-use crate::report::{ClaimReport, Item, ModelReport, Numbers, Report, Shown, TableColumn, TableReport};
+use crate::report::{
+    ClaimReport, Frame, Item, ModelReport, Numbers, Report, Shown, TableColumn, TableReport,
+};
 
 /// Rows of a table shown in the text form; the other forms have them all.
 const MAX_ROWS: usize = 400;
@@ -127,15 +129,19 @@ fn value_lines(value: &Shown, quantity: &str, name_width: usize, value_width: us
     format!("{}{}", hanging(&head, quantity, look), indented(&about, 4, look))
 }
 
-/// What the prompt answers to an expression.
+/// What the prompt answers to an expression: beside it its dimension, which
+/// says the frame as well, or on a narrow terminal the frame alone.
 fn answer(shown: &Shown, look: &Look) -> String {
-    let quantity = quantity(shown, look);
+    let mut bare = shown.clone();
+    if frame_word(shown).is_some_and(|word| shown.dimension.contains(word)) {
+        bare.frame = Frame::Proper;
+    }
     let dimension = look.paint(Tone::Faint, &shown.dimension);
-    let line = format!("= {quantity}   {dimension}");
+    let line = format!("= {}   {dimension}", quantity(&bare, look));
     if look::width(&line) <= look.width {
         format!("{}\n", line.trim_end())
     } else {
-        hanging("= ", &quantity, look)
+        hanging("= ", &quantity(shown, look), look)
     }
 }
 
@@ -425,7 +431,6 @@ fn set((name, value, unit): &(String, Numbers, String), look: &Look) -> String {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::report::Frame;
 
     fn shown(name: &str, value: f64, unit: &str, about: &str) -> Shown {
         Shown {

@@ -229,6 +229,15 @@ impl rustyline::hint::Hint for Remark {
     }
 }
 
+impl Assistant {
+    /// Whether the line ends in the beginning of a name.
+    fn is_unfinished(&self, line: &str) -> bool {
+        let (start, found) = self.session.borrow().complete(line, line.len());
+        let word = line.get(start..).unwrap_or("");
+        !word.is_empty() && !found.is_empty() && found.iter().all(|one| one.name != word)
+    }
+}
+
 impl Hinter for Assistant {
     type Hint = Remark;
 
@@ -236,12 +245,14 @@ impl Hinter for Assistant {
         if position < line.len() || line.trim().is_empty() || line.len() > MAX_LIVE {
             return None;
         }
-        if entry::is_command(line) {
+        if entry::has_command(line) {
             return None;
         }
         let remark = match self.session.borrow().hint(line) {
             Hint::Nothing => return None,
             Hint::Dimension(words) => words,
+            // Half a name is no mistake yet.
+            Hint::Wrong(_) if self.is_unfinished(line) => return None,
             Hint::Wrong(words) => words,
         };
         // What is typed and what is remarked must differ without colour too.
@@ -290,9 +301,11 @@ fn struck(
     names: &[(String, String, String)],
 ) -> Option<(usize, Vec<Completion>)> {
     let word = line.get(..position)?.strip_prefix("strike ")?;
-    let found = names.iter().filter(|(name, ..)| name.starts_with(word));
+    let found = names
+        .iter()
+        .filter(|(name, ..)| name.starts_with(word) && name != "that");
     let completion = |(name, dimension, _): &(String, String, String)| Completion {
-        name: name.clone(),
+        name: super::bare(name).into(),
         kind: "yours",
         about: dimension.clone(),
     };

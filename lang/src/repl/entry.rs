@@ -48,9 +48,10 @@ pub(super) fn goes_on(text: &str) -> bool {
     !hollow && parser::wants_more(text)
 }
 
-/// Whether a line is a word to the prompt, so that the checker has no say.
-pub(super) fn is_command(line: &str) -> bool {
-    command(line, &token::lex(line)).is_some()
+/// Whether a word to the prompt is among the lines, on which the checker has
+/// no say.
+pub(super) fn has_command(text: &str) -> bool {
+    each(text).iter().any(|entry| matches!(entry, Entry::Command(_)))
 }
 
 /// The entries of a pipe: each statement is answered by itself.

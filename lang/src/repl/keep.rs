@@ -72,7 +72,8 @@ impl Exchange {
         let ends = starts.iter().skip(1).copied().chain([text.len()]);
         for ((statement, start), end) in parsed.statements.iter().zip(&starts).zip(ends) {
             let written = text.get(*start..end).unwrap_or("").trim_end();
-            self.add_statement(statement, written);
+            let lines: Vec<_> = written.split('\n').map(str::trim_end).collect();
+            self.add_statement(statement, &lines.join("\n"));
         }
     }
 
@@ -101,10 +102,34 @@ impl Exchange {
             comment: None,
         };
         match role {
-            // In a sheet the model comes before all that needs it.
-            Role::Assumes => self.statements.insert(0, kept),
+            Role::Assumes => self.put_first(kept),
             Role::Binds | Role::Shows => self.statements.push(kept),
         }
+    }
+
+    /// In a sheet the model comes before all that needs it, and after what it
+    /// is made of.
+    fn put_first(&mut self, assumption: Kept) {
+        let mut needed = words_of(&assumption.text);
+        let mut before = Vec::new();
+        let mut after = Vec::new();
+        for kept in std::mem::take(&mut self.statements).into_iter().rev() {
+            let live = kept.comment.is_none();
+            if live
+                && kept
+                    .binds
+                    .iter()
+                    .any(|bound| needed.iter().any(|word| word == bound.name()))
+            {
+                needed.extend(words_of(&kept.text));
+                before.push(kept);
+            } else {
+                after.push(kept);
+            }
+        }
+        self.statements.extend(before.into_iter().rev());
+        self.statements.push(assumption);
+        self.statements.extend(after.into_iter().rev());
     }
 
     /// The statement with `that` replaced by what it stood for.
@@ -140,14 +165,14 @@ impl Exchange {
 
     /// Writes the sheet. The result says what was done, the error why nothing
     /// was.
-    pub(super) fn keep(&mut self, path: &str) -> Result<String, String> {
+    pub(super) fn keep(&mut self, path: &str, model: &str) -> Result<String, String> {
         if self.statements.is_empty() {
             return Err("there is nothing to keep yet".into());
         }
         if path.trim().is_empty() {
             return Err("keep takes the name of a file: keep \"note.zij\"".into());
         }
-        let (text, comments) = self.sheet()?;
+        let (text, comments) = self.sheet(model)?;
         let target = Path::new(path);
         let replaced = self.write(target, &text)?;
         self.last = Some((target.into(), text));
@@ -180,9 +205,19 @@ impl Exchange {
         ))
     }
 
-    /// The sheet and how many of its statements are comments. It checks.
-    fn sheet(&self) -> Result<(String, usize), String> {
+    /// The sheet and how many of its statements are comments. It checks, and
+    /// says the model that the prompt named.
+    fn sheet(&self, model: &str) -> Result<(String, usize), String> {
         let mut statements = self.statements.clone();
+        if statements.iter().all(|kept| kept.role != Role::Assumes) {
+            let assumption = Kept {
+                text: format!("assume {model}"),
+                binds: Vec::new(),
+                role: Role::Assumes,
+                comment: None,
+            };
+            statements.insert(0, assumption);
+        }
         for _ in 0..MAX_ROUNDS {
             let (text, places) = laid_out(&statements);
             let mut session = Session::new(Box::new(SheetFolder::current()));
@@ -242,6 +277,14 @@ fn commented(text: &str, why: &str) -> String {
         last.push_str(&format!("   ({why})"));
     }
     lines.join("\n")
+}
+
+/// The names in a text.
+fn words_of(text: &str) -> Vec<String> {
+    let words = token::lex(text).into_iter().filter(|token| token.kind.is_name());
+    words
+        .filter_map(|token| text.get(token.span.range()).map(String::from))
+        .collect()
 }
 
 fn bindings(kind: &StatementKind) -> (Role, Vec<Bound>) {
@@ -311,6 +354,40 @@ mod tests {
             text(&exchange),
             "# kept from the prompt\nassume wmap9\nx = 1\n# D_L(x)   (under the model before)\nD_L(x)\n"
         );
+    }
+
+    #[test]
+    fn the_model_stays_below_what_it_is_made_of() {
+        let exchange = exchange(&[
+            "x = 1",
+            "w = -0.9",
+            "model m = planck2018 with w0 = w",
+            "assume m",
+        ]);
+        assert_eq!(
+            text(&exchange),
+            "# kept from the prompt\nw = -0.9\nmodel m = planck2018 with w0 = w\nassume m\nx = 1\n"
+        );
+    }
+
+    #[test]
+    fn what_is_kept_checks_and_names_its_model() {
+        let mut exchange = exchange(&[
+            "x = 1",
+            "y = x + 1",
+            "D_C(y) [Gpc]",
+            "that * 2",
+            "x = 3",
+            "struck = 1",
+            "struck + 1",
+        ]);
+        exchange.strike("struck");
+        let (text, comments) = exchange.sheet("planck2018").expect("a sheet");
+        let report = Session::new(Box::new(SheetFolder::current())).check(&Source::new("s", &text));
+        assert!(!report.has_errors(), "{text}");
+        assert!(text.contains("\nassume planck2018\n"), "{text}");
+        assert!(comments >= 3, "{text}");
+        assert!(text.contains("\nx = 3\n") && text.contains("# x = 1"), "{text}");
     }
 
     #[test]
