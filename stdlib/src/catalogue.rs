@@ -6,7 +6,7 @@
 
 use crate::dimension::{Dimension, Exponent, NUMBER};
 use crate::model::{DomainError, Model};
-use crate::{constants, cosmology, mathematics};
+use crate::{constants, cosmology, mathematics, redshift};
 use num_rational::Ratio;
 
 /// What is known about one name.
@@ -195,7 +195,8 @@ pub fn entries() -> impl Iterator<Item = &'static Entry> {
     let chapters = constants::ENTRIES
         .into_iter()
         .chain(mathematics::ENTRIES)
-        .chain(cosmology::ENTRIES);
+        .chain(cosmology::ENTRIES)
+        .chain([redshift::ENTRIES]);
     chapters.flatten()
 }
 

@@ -13,5 +13,6 @@ pub mod mathematics;
 pub mod model;
 pub mod numerics;
 pub mod prelude;
+pub mod redshift;
 pub mod units;
 pub mod words;
