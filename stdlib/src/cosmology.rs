@@ -8,8 +8,10 @@
 
 pub mod background;
 pub mod distance;
+pub mod early;
 pub mod future;
 mod geometry;
+pub mod growth;
 pub mod horizon;
 pub mod inverse;
 mod template;
@@ -28,12 +30,14 @@ pub use uom::si::f64::{
 use uom::si::{length::meter, time::second};
 
 /// The entries of these chapters, in the order of the handbook.
-pub static ENTRIES: [&[Entry]; 5] = [
+pub static ENTRIES: [&[Entry]; 7] = [
     values::ENTRIES,
     background::ENTRIES,
     future::ENTRIES,
     distance::ENTRIES,
     horizon::ENTRIES,
+    early::ENTRIES,
+    growth::ENTRIES,
 ];
 
 /// What a function of this library returns.

@@ -16,6 +16,7 @@ mod published;
 pub use parameters::PARAMETERS;
 pub use published::BASES;
 
+use crate::cosmology::growth::GrowthCell;
 use crate::dimension::Dimension;
 use budget::{Budget, Values};
 use expansion::Expansion;
@@ -107,6 +108,7 @@ pub struct Model {
     budget: Budget,
     expansion: Expansion,
     history: OnceLock<Result<History, DomainError>>,
+    growth: GrowthCell,
 }
 
 impl Model {
@@ -122,6 +124,7 @@ impl Model {
             budget,
             expansion,
             history: OnceLock::new(),
+            growth: GrowthCell::default(),
         }
     }
 
@@ -193,6 +196,11 @@ impl Model {
     pub(crate) fn history(&self) -> Result<&History, DomainError> {
         let history = self.history.get_or_init(|| History::new(&self.expansion));
         history.as_ref().map_err(Clone::clone)
+    }
+
+    /// Its linear growth.
+    pub(crate) fn growth(&self) -> &GrowthCell {
+        &self.growth
     }
 
     /// One of its integrals.
