@@ -13,6 +13,7 @@
 use crate::{repository, subject};
 use std::fmt::Write;
 use std::fs;
+use std::path::Path;
 
 const SIGN: &str = " ∴ ";
 const MORE: &str = "  … ";
@@ -24,29 +25,63 @@ const MORE: &str = "  … ";
 pub fn check_sessions() {
     let paths = repository::files("tests/sessions", "txt");
     assert!(!paths.is_empty(), "no sessions");
-    let update = std::env::var_os("UPDATE").is_some();
     let mut failures = String::new();
     for path in &paths {
         let recorded = repository::read(path);
-        let replayed = replay(&recorded);
-        if recorded == replayed {
-            continue;
-        }
-        if update {
-            fs::write(path, &replayed).unwrap_or_else(|error| panic!("{}: {error}", path.display()));
-            continue;
-        }
-        let _ = write!(
-            failures,
-            "\n==== {}\n{}",
-            repository::relative(path),
-            difference(&recorded, &replayed)
-        );
+        settle(path, &recorded, &replay(&recorded), &mut failures);
     }
     assert!(
         failures.is_empty(),
         "sessions differ (UPDATE=1 writes them anew){failures}"
     );
+}
+
+/// Runs every sheet of `examples` and compares what is shown with the file of
+/// the same name in `tests/sessions/examples`.
+///
+/// # Panics
+/// If an output differs, or there is no example.
+pub fn check_examples() {
+    let paths = repository::files("examples", "zij");
+    assert!(!paths.is_empty(), "no examples");
+    let mut failures = String::new();
+    for path in &paths {
+        let name = path.file_stem().unwrap_or_default();
+        let golden = repository::root()
+            .join("tests/sessions/examples")
+            .join(name)
+            .with_extension("out");
+        let shown = subject::said(&subject::run_at(path, &repository::read(path)));
+        settle(
+            &golden,
+            &fs::read_to_string(&golden).unwrap_or_default(),
+            &shown,
+            &mut failures,
+        );
+    }
+    assert!(
+        failures.is_empty(),
+        "outputs differ (UPDATE=1 writes them anew){failures}"
+    );
+}
+
+/// Writes a golden file anew where that is asked for, and otherwise notes the
+/// difference.
+fn settle(path: &Path, recorded: &str, now: &str, failures: &mut String) {
+    if recorded == now {
+        return;
+    }
+    if std::env::var_os("UPDATE").is_some() {
+        let written = fs::write(path, now);
+        written.unwrap_or_else(|error| panic!("{}: {error}", path.display()));
+    } else {
+        let _ = write!(
+            failures,
+            "\n==== {}\n{}",
+            repository::relative(path),
+            difference(recorded, now)
+        );
+    }
 }
 
 /// The session with the answers given now.

@@ -1,7 +1,7 @@
 //! Suites of sheets: fixtures of the checker, golden sessions, published
 //! values, the examples of the library and the example sheets.
 
-use zij_tests::exchange::check_sessions;
+use zij_tests::exchange::{check_examples, check_sessions};
 use zij_tests::fixture::check_sheets;
 use zij_tests::published::check_published;
 use zij_tests::{repository, subject};
@@ -29,6 +29,11 @@ fn fixtures_of_running() {
 #[test]
 fn golden_sessions() {
     check_sessions();
+}
+
+#[test]
+fn golden_examples() {
+    check_examples();
 }
 
 #[test]
