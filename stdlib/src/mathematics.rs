@@ -48,6 +48,20 @@ fn representable(value: f64, what: &str, x: f64) -> Result {
     if value.is_finite() {
         Ok(value)
     } else {
-        does_not_exist(format!("{what} of {x} is too large for a number (above 1.8e308)"))
+        does_not_exist(format!(
+            "{what} of {} is too large for a number (above 1.8e308)",
+            digits(x)
+        ))
+    }
+}
+
+/// A number as a message shows it: seven digits, the power of ten apart where
+/// it is far from 1.
+fn digits(x: f64) -> String {
+    let rounded: f64 = format!("{x:.6e}").parse().unwrap_or(x);
+    if rounded == 0.0 || (1e-4..1e7).contains(&rounded.abs()) {
+        format!("{rounded}")
+    } else {
+        format!("{rounded:e}")
     }
 }

@@ -212,7 +212,7 @@ impl Fault {
     pub fn diagnostic(&self, words: &dyn Words) -> (usize, Diagnostic) {
         let message = self.kind.message(words);
         let mut diagnostic = Diagnostic::error(self.code(), message, self.place.span, self.kind.label());
-        for met in &self.met {
+        for met in self.met.iter().filter(|met| !self.is_inside(met)) {
             diagnostic = self.label(diagnostic, *met, words);
         }
         for note in self.kind.notes(words) {
@@ -225,6 +225,12 @@ impl Fault {
             diagnostic = diagnostic.note(self.which_element(index, count));
         }
         (usize::from(self.place.source), diagnostic)
+    }
+
+    /// Whether this is a value in the midst of a function of the library, for
+    /// which the sheet has no text but the call itself.
+    fn is_inside(&self, met: &Met) -> bool {
+        met.place.source == self.place.source && met.place.span == self.place.span
     }
 
     fn label(&self, diagnostic: Diagnostic, met: Met, words: &dyn Words) -> Diagnostic {

@@ -1,6 +1,6 @@
 //! Elementary functions: roots, powers and logarithms, angles, rounding.
 
-use super::{A, ANGLE_TYPE, FUNCTION, NUMBER_TYPE, Result, does_not_exist, representable};
+use super::{A, ANGLE_TYPE, FUNCTION, NUMBER_TYPE, Result, digits, does_not_exist, representable};
 use crate::catalogue::{Definition, Entry, Type, argument};
 
 pub(super) static ENTRIES: &[Entry] = &[
@@ -422,7 +422,7 @@ fn logarithm_of_one_more(x: &[f64]) -> Result {
     }
     does_not_exist(format!(
         "the logarithm of 1 + {} does not exist: it needs a positive number",
-        x[0]
+        digits(x[0])
     ))
 }
 
@@ -443,7 +443,8 @@ fn logarithm(function: fn(f64) -> f64, x: f64) -> Result {
         return Ok(function(x));
     }
     does_not_exist(format!(
-        "the logarithm of {x} does not exist: it needs a positive number"
+        "the logarithm of {} does not exist: it needs a positive number",
+        digits(x)
     ))
 }
 
@@ -472,7 +473,10 @@ fn arc(name: &str, function: fn(f64) -> f64, x: f64) -> Result {
     if x.abs() <= 1.0 {
         return Ok(function(x));
     }
-    does_not_exist(format!("no angle has the {name} {x}: it lies between -1 and 1"))
+    does_not_exist(format!(
+        "no angle has the {name} {}: it lies between -1 and 1",
+        digits(x)
+    ))
 }
 
 fn arc_tangent(x: &[f64]) -> Result {
@@ -508,7 +512,7 @@ fn area_cosine(x: &[f64]) -> Result {
     }
     does_not_exist(format!(
         "no number has the hyperbolic cosine {}: it is 1 or more",
-        x[0]
+        digits(x[0])
     ))
 }
 
@@ -518,7 +522,7 @@ fn area_tangent(x: &[f64]) -> Result {
     }
     does_not_exist(format!(
         "no number has the hyperbolic tangent {}: it lies between -1 and 1",
-        x[0]
+        digits(x[0])
     ))
 }
 
@@ -530,7 +534,7 @@ mod tests {
 
     #[test]
     fn what_does_not_exist_is_said_in_words() {
-        let cases: [(Function, &[f64], &str); 7] = [
+        let cases: [(Function, &[f64], &str); 8] = [
             (natural_logarithm, &[-3.0], "the logarithm of -3 does not exist"),
             (decimal_logarithm, &[0.0], "the logarithm of 0 does not exist"),
             (square_root, &[-1.0], "a negative value has no square root"),
@@ -538,6 +542,11 @@ mod tests {
             (direction, &[0.0, -0.0], "two components of 0"),
             (area_tangent, &[1.0], "no number has the hyperbolic tangent 1"),
             (exponential, &[710.0], "the exponential of 710 is too large"),
+            (
+                natural_logarithm,
+                &[-2.754_062_24e-10],
+                "the logarithm of -2.754062e-10 does",
+            ),
         ];
         for (function, arguments, start) in cases {
             let error = function(arguments).expect_err(start);

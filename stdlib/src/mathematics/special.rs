@@ -1,7 +1,7 @@
 //! Special functions: errors of normally distributed values, the gamma
 //! function and its incomplete forms, Bessel functions.
 
-use super::{FUNCTION, NUMBER_TYPE, Result, does_not_exist, representable};
+use super::{FUNCTION, NUMBER_TYPE, Result, digits, does_not_exist, representable};
 use crate::catalogue::{Definition, Entry, argument};
 
 pub(super) static ENTRIES: &[Entry] = &[
@@ -191,7 +191,8 @@ fn log_gamma_function(x: &[f64]) -> Result {
 fn not_a_pole(x: f64) -> Result {
     if x <= 0.0 && x.floor() == x {
         return does_not_exist(format!(
-            "the gamma function has no value at {x}: it is infinite at 0 and the negative whole numbers"
+            "the gamma function has no value at {}: it is infinite at 0 and the negative whole numbers",
+            digits(x)
         ));
     }
     Ok(x)
@@ -280,12 +281,15 @@ const MAX_TERMS: u32 = 200_000;
 fn in_domain(a: f64, x: f64) -> Result {
     if a <= 0.0 || x < 0.0 {
         return does_not_exist(format!(
-            "the incomplete gamma function of {a} and {x} does not exist: the first is above 0, the second 0 or more"
+            "the incomplete gamma function of {} and {} does not exist: the first is above 0, the second 0 or more",
+            digits(a),
+            digits(x)
         ));
     }
     if a > MAX_SHAPE {
         return does_not_exist(format!(
-            "the incomplete gamma function is computed up to a = 1e8, not for {a}"
+            "the incomplete gamma function is computed up to a = 1e8, not for {}",
+            digits(a)
         ));
     }
     Ok(a)
