@@ -85,3 +85,10 @@ fn every_example_sheet_runs_and_its_claims_agree() {
     assert!(paths.len() >= 10, "only {} example sheets", paths.len());
     assert!(failures.is_empty(), "{}", failures.join("\n"));
 }
+
+#[test]
+fn the_generated_sheet_runs_and_its_claims_agree() {
+    let report = subject::run(&zij_tests::generate::sheet(250));
+    assert_eq!(report.exit_status(), 0, "{}", subject::said(&report));
+    assert!(report.diagnostics.is_empty(), "{}", subject::said(&report));
+}
