@@ -45,6 +45,9 @@ use std::sync::Arc;
 use typed::Typed;
 use unify::Unifier;
 
+/// How many of the last messages are looked through for the same one.
+const RECENT: usize = 16;
+
 /// What the checker found out about a place and the program needs.
 #[derive(Clone, Debug)]
 pub enum Note {
@@ -115,8 +118,16 @@ struct Local {
 pub trait Outside {
     /// The text of another sheet, or a sentence on why not.
     fn sheet(&self, path: &str) -> Result<Source, String>;
-    /// The head of a data table, or a sentence on why not.
-    fn head(&self, path: &str) -> Result<Head, String>;
+    /// The head of a data table, or why not.
+    fn head(&self, path: &str) -> Result<Head, NoHead>;
+}
+
+/// Why a data table cannot be used; a sentence.
+pub enum NoHead {
+    /// The file cannot be read.
+    Unreadable(String),
+    /// It is no table.
+    Malformed(String),
 }
 
 /// The head of a data table.
@@ -183,8 +194,17 @@ impl Checker {
         let mut trial = self.clone();
         trial.at_prompt = true;
         trial.record = Some(FxHashMap::default());
-        let is_library = |name: &str| zij_stdlib::prelude::CHAPTERS.iter().any(|chapter| chapter.name == name);
-        for (id, source) in self.sources.iter().enumerate().filter(|(_, source)| !is_library(&source.name)) {
+        let is_library = |name: &str| {
+            zij_stdlib::prelude::CHAPTERS
+                .iter()
+                .any(|chapter| chapter.name == name)
+        };
+        for (id, source) in self
+            .sources
+            .iter()
+            .enumerate()
+            .filter(|(_, source)| !is_library(&source.name))
+        {
             trial.source = id as u16;
             for statement in crate::parser::parse(&source.text).statements {
                 use ast::StatementKind::{Include, Read, Tally, Unit};
@@ -228,7 +248,10 @@ impl Checker {
     fn check_source(&mut self, id: u16, outside: &dyn Outside) {
         let text = Arc::clone(&self.sources[usize::from(id)].text);
         let parsed = crate::parser::parse(&text);
-        let found = parsed.diagnostics.into_iter().map(|diagnostic| (usize::from(id), diagnostic));
+        let found = parsed
+            .diagnostics
+            .into_iter()
+            .map(|diagnostic| (usize::from(id), diagnostic));
         self.diagnostics.extend(found);
         let outer = std::mem::replace(&mut self.source, id);
         self.lost.extend(parsed.lost.into_iter().map(|name| name.node));
@@ -244,7 +267,15 @@ impl Checker {
     }
 
     fn report(&mut self, diagnostic: Diagnostic) {
-        self.diagnostics.push((usize::from(self.source), diagnostic));
+        let source = usize::from(self.source);
+        // The parser may have said it already, and a unit may be looked at twice.
+        let recent = self.diagnostics.iter().rev().take(RECENT);
+        let same = |(other, said): &(usize, Diagnostic)| {
+            *other == source && said.code == diagnostic.code && said.at.span == diagnostic.at.span
+        };
+        if !recent.into_iter().any(same) {
+            self.diagnostics.push((source, diagnostic));
+        }
     }
 
     /// Reports and goes on with what agrees with everything.
@@ -254,7 +285,10 @@ impl Checker {
     }
 
     fn place(&self, span: Span) -> Place {
-        Place { source: self.source, span }
+        Place {
+            source: self.source,
+            span,
+        }
     }
 
     fn note(&mut self, span: Span, note: Note) {
@@ -290,12 +324,20 @@ impl Checker {
     #[must_use]
     pub fn settled(&self, form: &Form) -> Form {
         let form = self.unifier.settled(form);
-        if form.is_open() { form.without(|key| key >= form::FIRST_BOUND) } else { form }
+        if form.is_open() {
+            form.without(|key| key >= form::FIRST_BOUND)
+        } else {
+            form
+        }
     }
 }
 
 fn without_open_angle(form: Form) -> Form {
-    if form.has_other_dimension() { form.without(|key| key == infer::ANGLE) } else { form }
+    if form.has_other_dimension() {
+        form.without(|key| key == infer::ANGLE)
+    } else {
+        form
+    }
 }
 
 /// Whether values of a dimension can be shown in a unit; the frame is said

@@ -20,7 +20,10 @@ impl Allowance {
     /// The same on both sides.
     #[must_use]
     pub fn even(width: f64) -> Allowance {
-        Allowance { below: width, above: width }
+        Allowance {
+            below: width,
+            above: width,
+        }
     }
 
     /// The larger of the two.
@@ -56,13 +59,23 @@ pub fn within(uncertainty: &Uncertainty, sign: f64, count: f64) -> Allowance {
     } else {
         (uncertainty.minus, uncertainty.plus)
     };
-    Allowance { below: count * below, above: count * above }
+    Allowance {
+        below: count * below,
+        above: count * above,
+    }
 }
 
 /// `is about 16000`: to half a unit of the last digit that is not zero.
 #[must_use]
 pub fn about(number: &Number) -> Allowance {
-    let digits: String = number.text.split(['e', 'E']).next().unwrap_or("").chars().filter(char::is_ascii_digit).collect();
+    let digits: String = number
+        .text
+        .split(['e', 'E'])
+        .next()
+        .unwrap_or("")
+        .chars()
+        .filter(char::is_ascii_digit)
+        .collect();
     let zeros = digits.len() - digits.trim_end_matches('0').len();
     let zeros = if zeros == digits.len() { 0 } else { zeros };
     Allowance::even(0.5 * power_of_ten(number.last_digit + zeros as i32))
@@ -79,11 +92,21 @@ mod tests {
     use crate::source::Span;
 
     fn number(text: &str, value: f64, last_digit: i32) -> Number {
-        Number { value, last_digit, text: text.into(), uncertainty: None, span: Span::default() }
+        Number {
+            value,
+            last_digit,
+            text: text.into(),
+            uncertainty: None,
+            span: Span::default(),
+        }
     }
 
     fn written(number: &Number) -> Written<'_> {
-        Written { sign: 1.0, number, unit: None }
+        Written {
+            sign: 1.0,
+            number,
+            unit: None,
+        }
     }
 
     #[test]
@@ -103,7 +126,11 @@ mod tests {
 
     #[test]
     fn uneven_errors_are_taken_on_their_side() {
-        let uneven = Uncertainty { plus: 0.6, minus: 0.5, written: "(+0.6, -0.5)".into() };
+        let uneven = Uncertainty {
+            plus: 0.6,
+            minus: 0.5,
+            written: "(+0.6, -0.5)".into(),
+        };
         let allowance = within(&uneven, 1.0, 1.0);
         assert!(allowance.admits(67.4, 68.0) && !allowance.admits(67.4, 66.8));
     }

@@ -27,7 +27,10 @@ pub fn read(path: &str, bytes: &[u8]) -> Result<Data, String> {
         return Err(reason("a binary file, not a table of text".into()));
     }
     let text = std::str::from_utf8(bytes).map_err(|error| {
-        let line = 1 + bytes[..error.valid_up_to()].iter().filter(|byte| **byte == b'\n').count();
+        let line = 1 + bytes[..error.valid_up_to()]
+            .iter()
+            .filter(|byte| **byte == b'\n')
+            .count();
         reason(format!("line {line} is not UTF-8 text"))
     })?;
     let text = text.strip_prefix('\u{feff}').unwrap_or(text);
@@ -36,7 +39,10 @@ pub fn read(path: &str, bytes: &[u8]) -> Result<Data, String> {
         .comment(Some(b'#'))
         .trim(csv::Trim::All)
         .from_reader(text.as_bytes());
-    let head = reader.headers().map_err(|error| reason(in_words(&error)))?.clone();
+    let head = reader
+        .headers()
+        .map_err(|error| reason(in_words(&error)))?
+        .clone();
     let columns: Vec<(String, Option<String>)> = head.iter().map(name_and_unit).collect();
     if columns.iter().all(|(name, _)| name.is_empty()) {
         return Err(reason("empty: it has no head that names its columns".into()));
@@ -78,7 +84,10 @@ impl Data {
 
 /// Tabs where the name says so or the head has them, else commas.
 fn delimiter(path: &str, text: &str) -> u8 {
-    let head = text.lines().find(|line| !line.starts_with('#') && !line.trim().is_empty()).unwrap_or("");
+    let head = text
+        .lines()
+        .find(|line| !line.starts_with('#') && !line.trim().is_empty())
+        .unwrap_or("");
     let tabs = path.ends_with(".tsv") || (head.contains('\t') && !head.contains(','));
     if tabs { b'\t' } else { b',' }
 }
@@ -86,10 +95,16 @@ fn delimiter(path: &str, text: &str) -> u8 {
 /// `r [Mpc]` and `r (Mpc)`.
 fn name_and_unit(head: &str) -> (String, Option<String>) {
     for (open, close) in [('[', ']'), ('(', ')')] {
-        let inner = head.trim_end().strip_suffix(close).and_then(|text| text.split_once(open));
+        let inner = head
+            .trim_end()
+            .strip_suffix(close)
+            .and_then(|text| text.split_once(open));
         if let Some((name, unit)) = inner {
             let unit = unit.trim();
-            return (name.trim().to_owned(), (!unit.is_empty()).then(|| unit.to_owned()));
+            return (
+                name.trim().to_owned(),
+                (!unit.is_empty()).then(|| unit.to_owned()),
+            );
         }
     }
     (head.trim().to_owned(), None)
@@ -97,7 +112,11 @@ fn name_and_unit(head: &str) -> (String, Option<String>) {
 
 fn in_words(error: &csv::Error) -> String {
     match error.kind() {
-        csv::ErrorKind::UnequalLengths { pos, expected_len, len } => {
+        csv::ErrorKind::UnequalLengths {
+            pos,
+            expected_len,
+            len,
+        } => {
             let line = pos.as_ref().map_or(0, csv::Position::line);
             format!("line {line} has {len} fields, and the head {expected_len}")
         }

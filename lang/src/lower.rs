@@ -141,7 +141,13 @@ impl<'c> Lowering<'c> {
     }
 
     /// The node of an expression that stands in a statement.
-    pub fn expression(&mut self, expr: &Expr, limit: BindingId, source: u16, rests_on: &[BindingId]) -> NodeId {
+    pub fn expression(
+        &mut self,
+        expr: &Expr,
+        limit: BindingId,
+        source: u16,
+        rests_on: &[BindingId],
+    ) -> NodeId {
         self.in_order(rests_on);
         self.within(limit, source, |this| this.lower(expr))
     }
@@ -152,8 +158,13 @@ impl<'c> Lowering<'c> {
         let plot = &*table.plot;
         self.within(table.limit, table.place.source, |this| {
             let over = this.lower(&plot.over);
-            this.locals.push((plot.variable.node.clone(), At { level: 0, node: over }));
-            let columns: Vec<NodeId> = plot.columns.iter().map(|(column, _)| this.lower(column)).collect();
+            this.locals
+                .push((plot.variable.node.clone(), At { level: 0, node: over }));
+            let columns: Vec<NodeId> = plot
+                .columns
+                .iter()
+                .map(|(column, _)| this.lower(column))
+                .collect();
             this.locals.pop();
             std::iter::once(over).chain(columns).collect()
         })
@@ -167,11 +178,20 @@ impl<'c> Lowering<'c> {
         self.program.main = main.block;
         let mut columns: Vec<((BindingId, usize), u32)> = self.columns.into_iter().collect();
         columns.sort_by_key(|(_, number)| *number);
-        (self.program, columns.into_iter().map(|(column, _)| column).collect(), self.too_large)
+        (
+            self.program,
+            columns.into_iter().map(|(column, _)| column).collect(),
+            self.too_large,
+        )
     }
 
     fn within<T>(&mut self, limit: BindingId, source: u16, work: impl FnOnce(&mut Self) -> T) -> T {
-        let scope = Scope { limit, source, base: self.locals.len(), ..self.scope.clone() };
+        let scope = Scope {
+            limit,
+            source,
+            base: self.locals.len(),
+            ..self.scope.clone()
+        };
         let outer = std::mem::replace(&mut self.scope, scope);
         let result = work(self);
         self.scope = outer;
@@ -195,9 +215,16 @@ impl<'c> Lowering<'c> {
     fn value_of(&mut self, id: BindingId) -> At {
         let binding = self.checker.environment.binding(id);
         let Meaning::Value(value) = &binding.meaning else {
-            return At { level: self.level, node: self.missing(binding.place.span) };
+            return At {
+                level: self.level,
+                node: self.missing(binding.place.span),
+            };
         };
-        let context = if value.given || !binding.needs_model { 0 } else { self.scope.context };
+        let context = if value.given || !binding.needs_model {
+            0
+        } else {
+            self.scope.context
+        };
         if let Some(known) = self.memo.get(&(id, context)) {
             return *known;
         }
@@ -212,7 +239,10 @@ impl<'c> Lowering<'c> {
             blame: self.scope.blame.filter(|_| in_library),
             table: None,
         };
-        let outer = (std::mem::replace(&mut self.scope, scope), std::mem::replace(&mut self.level, level));
+        let outer = (
+            std::mem::replace(&mut self.scope, scope),
+            std::mem::replace(&mut self.level, level),
+        );
         let node = match &value.instead {
             Some((source, expr)) => {
                 self.scope.source = *source;
@@ -231,7 +261,13 @@ impl<'c> Lowering<'c> {
         let outer = self.locals.len();
         for binding in wheres {
             let node = self.lower(&binding.value);
-            self.locals.push((binding.name.node.clone(), At { level: self.level, node }));
+            self.locals.push((
+                binding.name.node.clone(),
+                At {
+                    level: self.level,
+                    node,
+                },
+            ));
         }
         let node = self.lower(value);
         self.locals.truncate(outer);
@@ -255,10 +291,14 @@ impl<'c> Lowering<'c> {
         let parent = self.builders[into].parent;
         let outer = self.import_into(at, parent);
         let builder = &mut self.builders[into];
-        let place = builder.captures.iter().position(|known| *known == outer).unwrap_or_else(|| {
-            builder.captures.push(outer);
-            builder.captures.len() - 1
-        });
+        let place = builder
+            .captures
+            .iter()
+            .position(|known| *known == outer)
+            .unwrap_or_else(|| {
+                builder.captures.push(outer);
+                builder.captures.len() - 1
+            });
         let span = self.builders[at.level].block.nodes[at.node as usize].span;
         self.emit_in(into, Op::Input(place as u32 + 1), span)
     }
@@ -280,7 +320,12 @@ impl<'c> Lowering<'c> {
         let builder = &mut self.builders[level];
         let id = builder.block.nodes.len() as NodeId;
         let series = is_series(&op, &builder.block);
-        builder.block.nodes.push(Node { op, span, source, series });
+        builder.block.nodes.push(Node {
+            op,
+            span,
+            source,
+            series,
+        });
         if let Some(key) = key {
             builder.known.insert(key, id);
         }
@@ -298,14 +343,21 @@ impl<'c> Lowering<'c> {
 
     fn local(&self, name: &str) -> Option<At> {
         let in_sight = &self.locals[self.scope.base.min(self.locals.len())..];
-        in_sight.iter().rev().find(|(known, _)| known == name).map(|(_, at)| *at)
+        in_sight
+            .iter()
+            .rev()
+            .find(|(known, _)| known == name)
+            .map(|(_, at)| *at)
     }
 }
 
 impl Builder {
     fn new(parent: usize, inputs: u32) -> Builder {
         Builder {
-            block: Block { inputs, ..Block::default() },
+            block: Block {
+                inputs,
+                ..Block::default()
+            },
             parent,
             captures: Vec::new(),
             known: FxHashMap::default(),

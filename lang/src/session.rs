@@ -7,7 +7,7 @@ mod repair;
 mod words;
 
 use crate::ast::StatementKind;
-use crate::check::{Checker, Head, Meaning, Outside, Space};
+use crate::check::{Checker, Head, Meaning, NoHead, Outside, Space};
 use crate::data;
 use crate::report::Report;
 use crate::source::Source;
@@ -86,8 +86,9 @@ impl Outside for Reach<'_> {
         Ok(Source::new(path, &text))
     }
 
-    fn head(&self, path: &str) -> Result<Head, String> {
-        let columns = data::read(path, &self.0.read(path)?)?.columns;
+    fn head(&self, path: &str) -> Result<Head, NoHead> {
+        let bytes = self.0.read(path).map_err(NoHead::Unreadable)?;
+        let columns = data::read(path, &bytes).map_err(NoHead::Malformed)?.columns;
         Ok(Head { columns })
     }
 }
@@ -96,7 +97,10 @@ impl Session {
     /// A session with the library and nothing else.
     #[must_use]
     pub fn new(files: Box<dyn Files>) -> Session {
-        Session { files, checker: Checker::new() }
+        Session {
+            files,
+            checker: Checker::new(),
+        }
     }
 
     /// Overrides `given NAME`, as `--given z=1.3` does. The error is a
@@ -159,7 +163,11 @@ impl Session {
     fn report(&self, before: &Checker, source: &Source) -> Report {
         let mut diagnostics = self.checker.diagnostics.clone();
         repair::prove(&mut diagnostics, before, source, &Reach(&*self.files));
-        Report { sources: self.checker.sources.clone(), diagnostics, ..Report::default() }
+        Report {
+            sources: self.checker.sources.clone(),
+            diagnostics,
+            ..Report::default()
+        }
     }
 
     /// The names bound at the prompt, each with its dimension in words and
@@ -167,12 +175,14 @@ impl Session {
     #[must_use]
     pub fn names(&self) -> Vec<(String, String, String)> {
         let visible = self.checker.environment.visible();
-        let own = visible.filter(|(_, binding)| {
-            !matches!(binding.space, Space::LibraryValue | Space::LibraryFunction)
-        });
+        let own = visible
+            .filter(|(_, binding)| !matches!(binding.space, Space::LibraryValue | Space::LibraryFunction));
         own.map(|(id, binding)| {
             let (name, what) = match &binding.meaning {
-                Meaning::Value(value) => (binding.name.to_string(), self.checker.describe(&value.scheme.typed.form)),
+                Meaning::Value(value) => (
+                    binding.name.to_string(),
+                    self.checker.describe(&value.scheme.typed.form),
+                ),
                 Meaning::Function(_) => (self.checker.signature_of(id), "a function".into()),
                 Meaning::Model(_) => (binding.name.to_string(), "a model".into()),
                 Meaning::Table(_) => (binding.name.to_string(), "a table".into()),

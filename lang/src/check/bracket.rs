@@ -6,7 +6,6 @@ use super::typed::{Measure, Typed};
 use super::unify::Sort;
 use super::{Checker, Note, Space, error, library};
 use crate::ast::{Bracket, Conversion, Expr, Name};
-use crate::source::Span;
 use num_rational::Ratio;
 use std::sync::Arc;
 use zij_stdlib::dimension::Generator;
@@ -32,21 +31,26 @@ impl Checker {
             // What it should be is known, and goes on as that.
             return Typed::unknown();
         }
-        let it = Bracketed { value, typed, bracket, measure };
+        let it = Bracketed {
+            value,
+            typed,
+            bracket,
+            measure,
+        };
         match &bracket.conversion {
             None => self.express(&it),
             Some(Conversion::At(z)) => {
                 self.infer_number(z, "a redshift");
-                self.move_frame(&it, bracket.span)
+                self.move_frame(&it)
             }
-            Some(Conversion::Today(span)) => self.move_frame(&it, *span),
+            Some(Conversion::Today(_)) => self.move_frame(&it),
             Some(Conversion::ForH(span)) => {
                 self.use_model(*span);
-                self.settle_h(&it, *span)
+                self.settle_h(&it)
             }
             Some(Conversion::ForGivenH(h)) => {
                 self.infer_number(h, "h");
-                self.settle_h(&it, h.span)
+                self.settle_h(&it)
             }
             Some(Conversion::ByHand(_)) => self.declare(&it),
             Some(Conversion::Via(names)) => self.bridge(&it, names),
@@ -56,14 +60,19 @@ impl Checker {
     fn infer_conversion(&mut self, bracket: &Bracket) {
         match &bracket.conversion {
             Some(Conversion::At(expr) | Conversion::ForGivenH(expr)) => drop(self.infer(expr)),
-            Some(Conversion::Today(_) | Conversion::ForH(_) | Conversion::ByHand(_) | Conversion::Via(_)) | None => {}
+            Some(Conversion::Today(_) | Conversion::ForH(_) | Conversion::ByHand(_) | Conversion::Via(_))
+            | None => {}
         }
     }
 
     /// What a unit asks of a value: a unit that names no frame leaves it open.
     pub(super) fn asked(&mut self, measure: &Measure) -> Form {
         let form = self.with_open_angle(measure.form.clone());
-        if measure.framed { form } else { form.times(&self.unifier.fresh(Sort::Along(COMOVING))) }
+        if measure.framed {
+            form
+        } else {
+            form.times(&self.unifier.fresh(Sort::Along(COMOVING)))
+        }
     }
 
     fn express(&mut self, it: &Bracketed<'_>) -> Typed {
@@ -78,7 +87,12 @@ impl Checker {
 
     /// The power of `generator` in the value, where all else agrees with the
     /// unit; an unknown one is taken to be `natural`.
-    fn power_of(&mut self, it: &Bracketed<'_>, generator: Key, natural: Option<Exponent>) -> Result<Exponent, Typed> {
+    fn power_of(
+        &mut self,
+        it: &Bracketed<'_>,
+        generator: Key,
+        natural: Option<Exponent>,
+    ) -> Result<Exponent, Typed> {
         let rest = it.measure.form.without(|key| key == generator);
         let mut rest = self.with_open_angle(rest);
         if generator != COMOVING && !it.measure.framed {
@@ -97,7 +111,11 @@ impl Checker {
         let Some(natural) = natural else {
             return Err(self.wrong(error::open_h(it.bracket.span)));
         };
-        if self.unifier.unify(&found, &Form::power_of(generator, natural)).is_err() {
+        if self
+            .unifier
+            .unify(&found, &Form::power_of(generator, natural))
+            .is_err()
+        {
             let diagnostic = self.wrong_bracket(it, &target);
             return Err(self.wrong(diagnostic));
         }
@@ -105,7 +123,7 @@ impl Checker {
     }
 
     /// `[kpc at z]`, `[Gly today]`, `[cMpc at z]`.
-    fn move_frame(&mut self, it: &Bracketed<'_>, span: Span) -> Typed {
+    fn move_frame(&mut self, it: &Bracketed<'_>) -> Typed {
         let target = it.measure.form.exponent(COMOVING);
         let length = it.measure.form.of_generator(Generator::Length);
         let natural = if form::is_zero(target) { length } else { form::ZERO };
@@ -115,16 +133,19 @@ impl Checker {
         };
         if power == target {
             let what = self.describe(&it.typed.form);
-            return self.wrong(error::frame_already(it.value.span, span, &what));
+            return self.wrong(error::frame_already(it.value.span, it.bracket, &what));
         }
         self.note(it.bracket.span, Note::Redshift(target - power));
-        let form = self.unifier.resolve(&it.typed.form).without(|key| key == COMOVING);
+        let form = self
+            .unifier
+            .resolve(&it.typed.form)
+            .without(|key| key == COMOVING);
         let form = form.times(&Form::power_of(COMOVING, target));
         Typed::quantity(form).shown_in(Some(Arc::clone(&it.measure)))
     }
 
     /// `[Mpc for h]`, `[Mpc for h = 0.7]`, `[Mpc/h for h]`.
-    fn settle_h(&mut self, it: &Bracketed<'_>, span: Span) -> Typed {
+    fn settle_h(&mut self, it: &Bracketed<'_>) -> Typed {
         let target = it.measure.form.exponent(LITTLE_H);
         let power = match self.power_of(it, LITTLE_H, None) {
             Ok(power) => power,
@@ -132,10 +153,18 @@ impl Checker {
         };
         if power == target {
             let what = self.describe(&it.typed.form);
-            return self.wrong(error::h_already(it.value.span, span, &what, form::is_zero(target)));
+            return self.wrong(error::h_already(
+                it.value.span,
+                it.bracket,
+                &what,
+                form::is_zero(target),
+            ));
         }
         self.note(it.bracket.span, Note::LittleH(power - target));
-        let form = self.unifier.resolve(&it.typed.form).without(|key| key == LITTLE_H);
+        let form = self
+            .unifier
+            .resolve(&it.typed.form)
+            .without(|key| key == LITTLE_H);
         let form = form.times(&Form::power_of(LITTLE_H, target));
         Typed::quantity(form).shown_in(Some(Arc::clone(&it.measure)))
     }
@@ -146,7 +175,12 @@ impl Checker {
         let rides = |key: Key| form::is_sky_key(key) || (FIRST_TALLY..FIRST_BOUND).contains(&key);
         let value = self.unifier.resolve(&it.typed.form);
         let declared = it.measure.form.clone();
-        let keys: Vec<Key> = value.parts().chain(declared.parts()).map(|(key, _)| key).filter(|key| rides(*key)).collect();
+        let keys: Vec<Key> = value
+            .parts()
+            .chain(declared.parts())
+            .map(|(key, _)| key)
+            .filter(|key| rides(*key))
+            .collect();
         let mut target = declared.clone();
         for key in keys.into_iter().chain([ANGLE, MAGNITUDE, COMOVING, LITTLE_H]) {
             target = target.times(&self.unifier.fresh(Sort::Along(key)));
@@ -169,7 +203,12 @@ impl Checker {
             }
         }
         let settled = self.settled(&it.typed.form);
-        if self.unifier.resolve(&it.typed.form).unknowns().any(|key| self.is_any(key)) {
+        if self
+            .unifier
+            .resolve(&it.typed.form)
+            .unknowns()
+            .any(|key| self.is_any(key))
+        {
             return self.wrong(error::open_bridge(it.value.span));
         }
         let (value, target) = (bare(&settled), bare(&it.measure.form));
@@ -185,7 +224,13 @@ impl Checker {
             [] => {
                 let words = [self.describe(&value), self.describe(&target)];
                 let left = self.describe(&target.per(&value));
-                self.wrong(error::no_bridge(it.bracket.span, it.value.span, &words, &left, names))
+                self.wrong(error::no_bridge(
+                    it.bracket.span,
+                    it.value.span,
+                    &words,
+                    &left,
+                    names,
+                ))
             }
             _ => self.wrong(error::many_bridges(it.bracket.span, names)),
         }
@@ -208,7 +253,10 @@ impl Checker {
             self.report(error::no_such_constant(name));
             return None;
         }
-        let expr = Expr { kind: crate::ast::ExprKind::Name(name.node.clone()), span: name.span };
+        let expr = Expr {
+            kind: crate::ast::ExprKind::Name(name.node.clone()),
+            span: name.span,
+        };
         let typed = self.infer_quantity(&expr);
         let form = self.settled(&typed.form);
         (!typed.is_unknown()).then_some(form)
@@ -261,20 +309,32 @@ fn ways_across(value: &Form, target: &Form, constants: &[Form]) -> Vec<Way> {
 /// The powers of `constants` whose product is `needed`: none, or several
 /// (`Some(None)`), or one set. Gauss–Jordan elimination.
 fn solve(constants: &[Form], needed: &Form) -> Option<Option<Vec<Exponent>>> {
-    let mut keys: Vec<Key> = constants.iter().chain([needed]).flat_map(|form| form.parts().map(|(key, _)| key)).collect();
+    let mut keys: Vec<Key> = constants
+        .iter()
+        .chain([needed])
+        .flat_map(|form| form.parts().map(|(key, _)| key))
+        .collect();
     keys.sort_unstable();
     keys.dedup();
     let columns = constants.len();
     let row = |key: &Key| -> Vec<Exponent> {
-        constants.iter().chain([needed]).map(|form| form.exponent(*key)).collect()
+        constants
+            .iter()
+            .chain([needed])
+            .map(|form| form.exponent(*key))
+            .collect()
     };
     let mut rows: Vec<Vec<Exponent>> = keys.iter().map(row).collect();
     let mut rank = 0;
     for column in 0..columns {
-        let Some(pivot) = (rank..rows.len()).find(|row| !form::is_zero(rows[*row][column])) else { continue };
+        let Some(pivot) = (rank..rows.len()).find(|row| !form::is_zero(rows[*row][column])) else {
+            continue;
+        };
         rows.swap(rank, pivot);
         let head = rows[rank][column];
-        rows[rank].iter_mut().for_each(|entry| *entry = form::divide(*entry, head));
+        rows[rank]
+            .iter_mut()
+            .for_each(|entry| *entry = form::divide(*entry, head));
         let lead = rows[rank].clone();
         for (_, other) in rows.iter_mut().enumerate().filter(|(index, _)| *index != rank) {
             let factor = other[column];

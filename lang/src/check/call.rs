@@ -9,6 +9,7 @@ use super::{BindingId, Checker, Local, Meaning, Note, Space, error, library};
 use crate::ast::{Argument, Expr, ExprKind, Name, Range, Step};
 use crate::source::Span;
 use smol_str::SmolStr;
+use std::borrow::Cow;
 use std::sync::Arc;
 use zij_stdlib::catalogue::{Definition, Entry, Type};
 
@@ -82,21 +83,26 @@ pub const NOT_YET: &[&str] = &["uncertainty", "poisson", "spread"];
 #[must_use]
 pub fn binding_form(name: &str, arguments: &[Argument]) -> Option<BindingForm> {
     let (_, form) = BINDING_FORMS.iter().find(|(word, _)| *word == name)?;
-    let binds = arguments.iter().any(|argument| !matches!(argument, Argument::Positional(_)));
+    let binds = arguments
+        .iter()
+        .any(|argument| !matches!(argument, Argument::Positional(_)));
     (binds || *form != BindingForm::Sum).then_some(*form)
 }
 
 /// The function of series of this name.
 #[must_use]
 pub fn series_function(name: &str) -> Option<SeriesFunction> {
-    SERIES_FUNCTIONS.iter().find(|(word, _)| *word == name).map(|(_, function)| *function)
+    SERIES_FUNCTIONS
+        .iter()
+        .find(|(word, _)| *word == name)
+        .map(|(_, function)| *function)
 }
 
 /// The parts of a binding form: what is on either side of `=` (or the body
 /// alone), the variable and what it runs over.
 pub struct BindingParts<'a> {
     /// The body, or the left side of an equation.
-    pub body: &'a Expr,
+    pub body: Cow<'a, Expr>,
     /// The right side of an equation.
     pub right: Option<Right<'a>>,
     /// The variable.
@@ -112,13 +118,35 @@ pub struct Right<'a>(pub &'a Expr);
 /// The parts of a binding form, if it has them.
 #[must_use]
 pub fn binding_parts(arguments: &[Argument]) -> Option<BindingParts<'_>> {
-    let [first, Argument::Named(variable, over)] = arguments else { return None };
+    let [first, Argument::Named(variable, over)] = arguments else {
+        return None;
+    };
     match first {
-        Argument::Positional(body) => Some(BindingParts { body, right: None, variable, over }),
-        Argument::Equation(body, right) => {
-            Some(BindingParts { body, right: Some(Right(right)), variable, over })
+        Argument::Positional(body) => Some(BindingParts {
+            body: Cow::Borrowed(body),
+            right: None,
+            variable,
+            over,
+        }),
+        Argument::Equation(body, right) => Some(BindingParts {
+            body: Cow::Borrowed(body),
+            right: Some(Right(right)),
+            variable,
+            over,
+        }),
+        // The left side is a name alone: `root(t = 3 - t, t = 0 .. 10)`.
+        Argument::Named(name, right) => {
+            let body = Expr {
+                kind: ExprKind::Name(name.node.clone()),
+                span: name.span,
+            };
+            Some(BindingParts {
+                body: Cow::Owned(body),
+                right: Some(Right(right)),
+                variable,
+                over,
+            })
         }
-        Argument::Named(..) => None,
     }
 }
 
@@ -174,7 +202,9 @@ impl Checker {
             let (place, value) = match argument {
                 Argument::Positional(value) => (Some(next), value),
                 Argument::Named(word, value) => {
-                    let place = parameters.iter().position(|(parameter, _)| *parameter == word.node);
+                    let place = parameters
+                        .iter()
+                        .position(|(parameter, _)| *parameter == word.node);
                     if place.is_none() {
                         self.infer(value);
                         self.report(error::unknown_argument(name, word, parameters));
@@ -202,7 +232,10 @@ impl Checker {
                 }
             }
         }
-        let missing = parameters.iter().zip(&placed).find(|((_, default), value)| !default && value.is_none());
+        let missing = parameters
+            .iter()
+            .zip(&placed)
+            .find(|((_, default), value)| !default && value.is_none());
         if let Some(((parameter, _), _)) = missing {
             self.report(error::missing_argument(name, parameter, parameters));
             return None;
@@ -221,58 +254,72 @@ impl Checker {
         let parameters: Vec<(SmolStr, bool)> = (function.parameters.iter())
             .map(|parameter| (parameter.name.node.clone(), parameter.default.is_some()))
             .collect();
-        let Some(placed) = self.in_order(name, &parameters, arguments) else { return Typed::unknown() };
+        let Some(placed) = self.in_order(name, &parameters, arguments) else {
+            return Typed::unknown();
+        };
         let instance = Instance::new(&mut self.unifier, &function.result.bound);
-        let mut wrong = function.result.typed.is_unknown();
+        let mut given = Vec::new();
         for (place, value) in placed.iter().enumerate() {
-            let Some(value) = value else { continue };
+            let Some(value) = *value else { continue };
             let actual = self.infer_quantity(value);
-            let expected = instance.form(&function.takes[place].form);
-            wrong |= actual.is_unknown();
-            if actual.is_unknown() || function.takes[place].is_unknown() {
-                continue;
-            }
-            if self.unifier.unify(&actual.form, &expected).is_err() {
-                let signature = self.signature_of(id);
-                let diagnostic = self.wrong_argument((name, &signature), &parameters, place, (value, &actual), &expected, &placed);
-                self.report(diagnostic);
-                wrong = true;
+            if !actual.is_unknown() && !function.takes[place].is_unknown() {
+                let expected = instance.form(&function.takes[place].form);
+                given.push(Given {
+                    place,
+                    value,
+                    actual,
+                    expected,
+                });
             }
         }
+        let wrong = self.fit_arguments(&given, &parameters, name, &|this| this.signature_of(id));
         if wrong && function.result.typed.is_unknown() {
             return Typed::unknown();
         }
         let typed = function.result.typed.clone();
         let form = self.unifier.resolve(&instance.form(&typed.form));
-        Typed { form: self.with_open_angle(form), ..typed }
+        Typed {
+            form: self.with_open_angle(form),
+            ..typed
+        }
     }
 
-    fn infer_library_call(&mut self, entry: &'static Entry, name: &Name, arguments: &[Argument], span: Span) -> Typed {
+    fn infer_library_call(
+        &mut self,
+        entry: &'static Entry,
+        name: &Name,
+        arguments: &[Argument],
+        span: Span,
+    ) -> Typed {
         if matches!(entry.definition, Definition::Cosmology(_)) {
             self.use_model(span);
         }
         let parameters: Vec<(SmolStr, bool)> = (entry.arguments.iter())
             .map(|argument| (SmolStr::new_static(argument.name), argument.default.is_some()))
             .collect();
-        let Some(placed) = self.in_order(name, &parameters, arguments) else { return Typed::unknown() };
+        let Some(placed) = self.in_order(name, &parameters, arguments) else {
+            return Typed::unknown();
+        };
         let mut variables: Vec<Form> = Vec::new();
         let mut only_unit = None;
+        let mut given = Vec::new();
         for (place, value) in placed.iter().enumerate() {
-            let Some(value) = value else { continue };
+            let Some(value) = *value else { continue };
             let actual = self.infer_quantity(value);
             let kind = &entry.arguments[place].kind;
             let expected = self.type_form(kind, &mut variables);
-            if actual.is_unknown() {
-                continue;
+            if !actual.is_unknown() {
+                let form = self.with_h_settled(&actual, value, &expected, kind);
+                only_unit.clone_from(&actual.unit);
+                given.push(Given {
+                    place,
+                    value,
+                    actual: Typed { form, ..actual },
+                    expected,
+                });
             }
-            let settled = self.with_h_settled(&actual, value, &expected, kind);
-            if self.unifier.unify(&settled, &expected).is_err() {
-                let signature = library::signature(entry);
-                let diagnostic = self.wrong_argument((name, &signature), &parameters, place, (value, &actual), &expected, &placed);
-                self.report(diagnostic);
-            }
-            only_unit = actual.unit;
         }
+        self.fit_arguments(&given, &parameters, name, &|_| library::signature(entry));
         let mut form = self.type_form(&entry.result, &mut variables);
         if is_root(&entry.result) {
             form = self.unifier.resolve(&form);
@@ -283,9 +330,56 @@ impl Checker {
         }
         let form = self.unifier.resolve(&form);
         let form = self.with_open_angle(form);
-        let keeps_unit = entry.result.variable.is_some_and(|(_, exponent)| exponent == super::form::ONE);
+        let keeps_unit = entry
+            .result
+            .variable
+            .is_some_and(|(_, exponent)| exponent == super::form::ONE);
         let usual = self.library_measure(entry.usual_unit);
         Typed::quantity(form).shown_in(if keeps_unit { only_unit } else { usual })
+    }
+
+    /// Makes each argument what the function takes, or says why it is not;
+    /// whether any was wrong.
+    fn fit_arguments(
+        &mut self,
+        given: &[Given<'_>],
+        parameters: &[(SmolStr, bool)],
+        name: &Name,
+        signature: &dyn Fn(&Checker) -> String,
+    ) -> bool {
+        let mut wrong = false;
+        let mut swapped = None;
+        for (index, one) in given.iter().enumerate() {
+            if swapped == Some(index) || self.unifier.unify(&one.actual.form, &one.expected).is_ok() {
+                continue;
+            }
+            wrong = true;
+            let signature = signature(self);
+            let place = (index + 1..given.len()).find(|other| self.are_swapped(one, &given[*other]));
+            let diagnostic = match place {
+                Some(place) => {
+                    swapped = Some(place);
+                    let other = &given[place];
+                    self.swapped_arguments(
+                        (name, &signature),
+                        (one.value, &one.actual),
+                        (other.value, &other.actual),
+                    )
+                }
+                None => {
+                    let side = (one.value, &one.actual);
+                    self.wrong_argument((name, &signature), parameters, one.place, side, &one.expected)
+                }
+            };
+            self.report(diagnostic);
+        }
+        wrong
+    }
+
+    fn are_swapped(&self, one: &Given<'_>, other: &Given<'_>) -> bool {
+        self.unifier.could_be(&one.actual.form, &other.expected)
+            && self.unifier.could_be(&other.actual.form, &one.expected)
+            && !self.unifier.could_be(&other.actual.form, &other.expected)
     }
 
     /// An argument of the library that carries h is settled with the model in
@@ -320,7 +414,12 @@ impl Checker {
         form
     }
 
-    fn infer_series_function(&mut self, function: SeriesFunction, name: &Name, arguments: &[Argument]) -> Typed {
+    fn infer_series_function(
+        &mut self,
+        function: SeriesFunction,
+        name: &Name,
+        arguments: &[Argument],
+    ) -> Typed {
         let extreme = matches!(function, SeriesFunction::Min | SeriesFunction::Max);
         if extreme && arguments.len() > 1 {
             return self.infer_extreme_of(name, arguments);
@@ -329,11 +428,15 @@ impl Checker {
         if function == SeriesFunction::Quantile {
             parameters.push((SmolStr::new_static("fraction"), false));
         }
-        let Some(placed) = self.in_order(name, &parameters, arguments) else { return Typed::unknown() };
+        let Some(placed) = self.in_order(name, &parameters, arguments) else {
+            return Typed::unknown();
+        };
         if let Some(Some(fraction)) = placed.get(1) {
             self.infer_number(fraction, "the fraction of a quantile");
         }
-        let Some(series) = placed[0] else { return Typed::unknown() };
+        let Some(series) = placed[0] else {
+            return Typed::unknown();
+        };
         if function == SeriesFunction::Count {
             self.infer(series);
             return Typed::quantity(Form::number());
@@ -352,7 +455,11 @@ impl Checker {
             match &first {
                 Some((head, known)) => {
                     let (head, known) = (*head, known.clone());
-                    self.same_or_report((head, &known), (value, &typed), &format!("the arguments of {}", name.node));
+                    self.same_or_report(
+                        (head, &known),
+                        (value, &typed),
+                        &format!("the arguments of {}", name.node),
+                    );
                 }
                 None => first = Some((value, typed)),
             }
@@ -360,7 +467,13 @@ impl Checker {
         first.map_or_else(Typed::unknown, |(_, typed)| typed)
     }
 
-    fn infer_binding_form(&mut self, form: BindingForm, name: &Name, arguments: &[Argument], span: Span) -> Typed {
+    fn infer_binding_form(
+        &mut self,
+        form: BindingForm,
+        name: &Name,
+        arguments: &[Argument],
+        span: Span,
+    ) -> Typed {
         match self.infer_bound_body(form, name, arguments, span) {
             None => Typed::unknown(),
             Some(bound) => self.result_of_form(form, &bound),
@@ -390,7 +503,13 @@ impl Checker {
         }
     }
 
-    fn infer_bound_body(&mut self, form: BindingForm, name: &Name, arguments: &[Argument], span: Span) -> Option<Bound> {
+    fn infer_bound_body(
+        &mut self,
+        form: BindingForm,
+        name: &Name,
+        arguments: &[Argument],
+        span: Span,
+    ) -> Option<Bound> {
         let Some(parts) = binding_parts(arguments) else {
             self.report(error::malformed_binding_form(span, &name.node));
             return None;
@@ -411,10 +530,10 @@ impl Checker {
             typed: variable.clone(),
             used: true,
         });
-        let body = self.infer_quantity(parts.body);
+        let body = self.infer_quantity(&parts.body);
         if let Some(Right(right)) = parts.right {
             let typed = self.infer_quantity(right);
-            self.same_or_report((parts.body, &body), (right, &typed), "the sides of the equation");
+            self.same_or_report((&parts.body, &body), (right, &typed), "the sides of the equation");
         }
         self.locals.pop();
         (!body.is_unknown() && !variable.is_unknown()).then_some(Bound { body, variable })
@@ -446,6 +565,14 @@ impl Checker {
         self.report(error::divided_bounds(span, name));
         None
     }
+}
+
+/// An argument that was given.
+struct Given<'a> {
+    place: usize,
+    value: &'a Expr,
+    actual: Typed,
+    expected: Form,
 }
 
 /// A body and its variable.

@@ -23,9 +23,11 @@ pub struct Written<'a> {
 #[must_use]
 pub fn written(expr: &Expr) -> Option<Written<'_>> {
     match &expr.kind {
-        ExprKind::Quantity(quantity) => {
-            Some(Written { sign: 1.0, number: &quantity.number, unit: quantity.unit.as_ref() })
-        }
+        ExprKind::Quantity(quantity) => Some(Written {
+            sign: 1.0,
+            number: &quantity.number,
+            unit: quantity.unit.as_ref(),
+        }),
         ExprKind::Group(inner) => written(inner),
         ExprKind::Unary(op, inner) if op.node == UnaryOp::Negate => {
             written(inner).map(|it| Written { sign: -it.sign, ..it })
@@ -60,7 +62,9 @@ impl Checker {
 
     fn check_claim(&mut self, claim: &ast::Claim) -> Option<Typed> {
         let subject = self.infer(&claim.subject);
-        let Some(assertion) = &claim.assertion else { return self.check_comparison(claim, &subject) };
+        let Some(assertion) = &claim.assertion else {
+            return self.check_comparison(claim, &subject);
+        };
         let quoted = self.check_assertion(claim, assertion, &subject);
         if subject.kind == Kind::Truth {
             self.report(error::truth_as_quantity(claim.subject.span));
@@ -85,7 +89,12 @@ impl Checker {
 
     /// The unit of what is quoted; `None` after an error.
     #[allow(clippy::option_option)] // An error, no unit, or a unit.
-    fn check_assertion(&mut self, claim: &ast::Claim, assertion: &Assertion, subject: &Typed) -> Option<Option<Arc<Measure>>> {
+    fn check_assertion(
+        &mut self,
+        claim: &ast::Claim,
+        assertion: &Assertion,
+        subject: &Typed,
+    ) -> Option<Option<Arc<Measure>>> {
         match assertion {
             Assertion::Is(quoted) | Assertion::About(quoted) => {
                 if written(quoted).is_none() && claim.within.is_none() {
@@ -105,7 +114,12 @@ impl Checker {
     }
 
     #[allow(clippy::option_option)] // As above.
-    fn check_quoted(&mut self, claim: &ast::Claim, quoted: &[&Expr], subject: &Typed) -> Option<Option<Arc<Measure>>> {
+    fn check_quoted(
+        &mut self,
+        claim: &ast::Claim,
+        quoted: &[&Expr],
+        subject: &Typed,
+    ) -> Option<Option<Arc<Measure>>> {
         let typed = self.infer_with_shared_unit(quoted);
         let mut sound = true;
         for (expr, typed) in quoted.iter().zip(&typed) {
@@ -143,7 +157,12 @@ impl Checker {
                 if self.unifier.unify(&subject.form, &typed.form).is_err() {
                     let words = [self.describe(&subject.form), self.describe(&typed.form)];
                     let plain = self.settled(&typed.form) == Form::number();
-                    self.report(error::unlike_tolerance(amount.span, claim.subject.span, &words, plain));
+                    self.report(error::unlike_tolerance(
+                        amount.span,
+                        claim.subject.span,
+                        &words,
+                        plain,
+                    ));
                 }
             }
         }
@@ -155,7 +174,11 @@ impl Checker {
         for key in form.unknowns().collect::<Vec<_>>() {
             self.unifier.keep(key);
         }
-        Face { form, unit: typed.unit, truth: typed.kind == Kind::Truth }
+        Face {
+            form,
+            unit: typed.unit,
+            truth: typed.kind == Kind::Truth,
+        }
     }
 }
 
@@ -167,5 +190,8 @@ fn tolerance_span(tolerance: &Tolerance) -> Span {
 
 /// The text of the claim without its label.
 fn claim_span(claim: &ast::Claim, statement: Span) -> Span {
-    Span { start: claim.subject.span.start, end: statement.end }
+    Span {
+        start: claim.subject.span.start,
+        end: statement.end,
+    }
 }

@@ -25,13 +25,20 @@ impl Checker {
     pub(super) fn describe_frame(&self, form: &Form) -> String {
         let settled = self.settled(form);
         let words = self.in_words(&settled);
-        if form::is_zero(settled.exponent(COMOVING)) { format!("{words} (proper)") } else { words }
+        if form::is_zero(settled.exponent(COMOVING)) {
+            format!("{words} (proper)")
+        } else {
+            words
+        }
     }
 
     /// A settled form in words.
     #[must_use]
     pub fn in_words(&self, form: &Form) -> String {
-        let counted: Vec<String> = form.parts().filter_map(|(key, power)| self.counted(key, power)).collect();
+        let counted: Vec<String> = form
+            .parts()
+            .filter_map(|(key, power)| self.counted(key, power))
+            .collect();
         let rest = form.library_part();
         if counted.is_empty() {
             return words::name(&rest);
@@ -45,7 +52,10 @@ impl Checker {
         if per.starts_with("a quantity") {
             format!("{} times {counted}", words::name(&rest))
         } else {
-            format!("a count ({counted}) per {}", per.trim_start_matches("an ").trim_start_matches("a "))
+            format!(
+                "a count ({counted}) per {}",
+                per.trim_start_matches("an ").trim_start_matches("a ")
+            )
         }
     }
 
@@ -54,17 +64,31 @@ impl Checker {
             return None;
         }
         let name = &self.environment.tallies.get((key - FIRST_TALLY) as usize)?.0;
-        Some(if power == form::ONE { name.to_string() } else { format!("{name}^{power}") })
+        Some(if power == form::ONE {
+            name.to_string()
+        } else {
+            format!("{name}^{power}")
+        })
     }
 
     /// The signature of a function of the sheet in field notation.
     #[must_use]
     pub fn signature_of(&self, id: BindingId) -> String {
         let binding = self.environment.binding(id);
-        let Meaning::Function(function) = &binding.meaning else { return binding.name.to_string() };
-        let arguments = function.parameters.iter().zip(&function.takes).map(|(parameter, typed)| {
-            (parameter.name.node.clone(), self.field_unit_of(typed), parameter.default.is_some())
-        });
+        let Meaning::Function(function) = &binding.meaning else {
+            return binding.name.to_string();
+        };
+        let arguments = function
+            .parameters
+            .iter()
+            .zip(&function.takes)
+            .map(|(parameter, typed)| {
+                (
+                    parameter.name.node.clone(),
+                    self.field_unit_of(typed),
+                    parameter.default.is_some(),
+                )
+            });
         let unit = self.field_unit_of(&function.result.typed);
         join_signature(&binding.name, Some(arguments.collect()), &unit)
     }
@@ -72,9 +96,7 @@ impl Checker {
     /// The unit that stands for a dimension in a signature; `""` for a number
     /// or where any dimension will do.
     pub(super) fn field_unit_of(&self, typed: &Typed) -> String {
-        let any = |key: Key| {
-            (FIRST_BOUND..form::FIRST_UNKNOWN).contains(&key) || self.is_any(key)
-        };
+        let any = |key: Key| (FIRST_BOUND..form::FIRST_UNKNOWN).contains(&key) || self.is_any(key);
         let open = self.unifier.resolve(&typed.form);
         if let Some(unit) = &typed.unit {
             return unit.text.to_string();
@@ -93,7 +115,11 @@ impl Checker {
         let mut text = usual.map_or_else(|| base_units(&rest), ToOwned::to_owned);
         for (key, power) in form.parts() {
             if let Some(counted) = self.counted(key, power) {
-                text = if text.is_empty() { counted } else { format!("{counted} {text}") };
+                text = if text.is_empty() {
+                    counted
+                } else {
+                    format!("{counted} {text}")
+                };
             }
         }
         text
@@ -157,10 +183,18 @@ pub fn join_signature(name: &str, arguments: Option<Vec<(SmolStr, String, bool)>
     let mut text = name.to_owned();
     if let Some(arguments) = arguments {
         let each = arguments.iter().map(|(name, unit, optional)| {
-            let unit = if unit.is_empty() { String::new() } else { format!(" [{unit}]") };
+            let unit = if unit.is_empty() {
+                String::new()
+            } else {
+                format!(" [{unit}]")
+            };
             format!("{name}{unit}{}", if *optional { " = …" } else { "" })
         });
         text = format!("{text}({})", each.collect::<Vec<_>>().join(", "));
     }
-    if unit.is_empty() { text } else { format!("{text} [{unit}]") }
+    if unit.is_empty() {
+        text
+    } else {
+        format!("{text} [{unit}]")
+    }
 }

@@ -178,7 +178,10 @@ impl Environment {
     /// Adds a binding.
     pub fn bind(&mut self, binding: Binding) -> BindingId {
         let id = self.bindings.len() as BindingId;
-        self.names.entry((binding.space, binding.name.clone())).or_default().push(id);
+        self.names
+            .entry((binding.space, binding.name.clone()))
+            .or_default()
+            .push(id);
         self.bindings.push(binding);
         id
     }

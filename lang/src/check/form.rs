@@ -110,7 +110,8 @@ impl Form {
     /// Whether a power outgrew all measure.
     #[must_use]
     pub fn is_unbounded(&self) -> bool {
-        self.parts().any(|(_, exponent)| exponent.numer().abs() > MAX_POWER || *exponent.denom() > MAX_POWER)
+        self.parts()
+            .any(|(_, exponent)| exponent.numer().abs() > MAX_POWER || *exponent.denom() > MAX_POWER)
     }
 
     /// The product.
@@ -166,20 +167,26 @@ impl Form {
             return Form::number();
         }
         let parts = self.parts().map(|(key, power)| (key, multiply(power, exponent)));
-        Form { parts: parts.collect() }
+        Form {
+            parts: parts.collect(),
+        }
     }
 
     /// Without what `drop` says of keys.
     #[must_use]
     pub fn without(&self, drop: impl Fn(Key) -> bool) -> Form {
-        Form { parts: self.parts().filter(|(key, _)| !drop(*key)).collect() }
+        Form {
+            parts: self.parts().filter(|(key, _)| !drop(*key)).collect(),
+        }
     }
 
     /// With keys renamed; the renaming may change their order.
     #[must_use]
     pub fn renamed(&self, rename: impl Fn(Key) -> Key) -> Form {
-        let mut parts: SmallVec<[(Key, Exponent); 4]> =
-            self.parts().map(|(key, exponent)| (rename(key), exponent)).collect();
+        let mut parts: SmallVec<[(Key, Exponent); 4]> = self
+            .parts()
+            .map(|(key, exponent)| (rename(key), exponent))
+            .collect();
         parts.sort_unstable_by_key(|(key, _)| *key);
         Form { parts }
     }
@@ -188,14 +195,18 @@ impl Form {
     #[must_use]
     pub fn library_part(&self) -> Dimension {
         let known = self.parts().filter(|(key, _)| *key < FIRST_TALLY);
-        known.fold(NUMBER, |dimension, (key, exponent)| dimension.raised(ALL[key as usize], exponent))
+        known.fold(NUMBER, |dimension, (key, exponent)| {
+            dimension.raised(ALL[key as usize], exponent)
+        })
     }
 
     /// Whether a dimension other than angle, magnitude and frame is in it, so
     /// that an angle in it may go unnamed.
     #[must_use]
     pub fn has_other_dimension(&self) -> bool {
-        self.parts.iter().any(|(key, _)| *key < FIRST_BOUND && !is_sky_key(*key))
+        self.parts
+            .iter()
+            .any(|(key, _)| *key < FIRST_BOUND && !is_sky_key(*key))
     }
 }
 
@@ -215,7 +226,10 @@ pub fn is_zero(exponent: Exponent) -> bool {
 #[must_use]
 pub fn add(a: Exponent, b: Exponent) -> Exponent {
     if *a.denom() == 1 && *b.denom() == 1 {
-        return a.numer().checked_add(*b.numer()).map_or(UNBOUNDED, |sum| Ratio::new_raw(sum, 1));
+        return a
+            .numer()
+            .checked_add(*b.numer())
+            .map_or(UNBOUNDED, |sum| Ratio::new_raw(sum, 1));
     }
     let wide = |x: Exponent| Ratio::new_raw(i128::from(*x.numer()), i128::from(*x.denom()));
     narrow(wide(a) + wide(b))
@@ -225,7 +239,10 @@ pub fn add(a: Exponent, b: Exponent) -> Exponent {
 #[must_use]
 pub fn multiply(a: Exponent, b: Exponent) -> Exponent {
     if *a.denom() == 1 && *b.denom() == 1 {
-        return a.numer().checked_mul(*b.numer()).map_or(UNBOUNDED, |product| Ratio::new_raw(product, 1));
+        return a
+            .numer()
+            .checked_mul(*b.numer())
+            .map_or(UNBOUNDED, |product| Ratio::new_raw(product, 1));
     }
     let wide = |x: Exponent| Ratio::new_raw(i128::from(*x.numer()), i128::from(*x.denom()));
     narrow(wide(a) * wide(b))
@@ -269,6 +286,9 @@ mod tests {
         }
         assert!(form.is_unbounded());
         let odd = Form::dimension(&LENGTH).power(Ratio::new(1, 2_147_483_629));
-        assert!(odd.times(&Form::dimension(&LENGTH).power(Ratio::new(1, 2_147_483_587))).is_unbounded());
+        assert!(
+            odd.times(&Form::dimension(&LENGTH).power(Ratio::new(1, 2_147_483_587)))
+                .is_unbounded()
+        );
     }
 }

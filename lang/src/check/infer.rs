@@ -91,7 +91,9 @@ impl Checker {
         if number.uncertainty.is_some() {
             self.warn_of_uncertainty(number.span);
         }
-        let Some(unit) = unit else { return Typed::quantity(self.bare_number(number.value)) };
+        let Some(unit) = unit else {
+            return Typed::quantity(self.bare_number(number.value));
+        };
         match self.measure(unit, true) {
             Some(measure) => self.literal_in(measure),
             None => Typed::unknown(),
@@ -137,7 +139,10 @@ impl Checker {
             local.used = true;
             let typed = local.typed.clone();
             let form = self.unifier.resolve(&typed.form);
-            return Typed { form: self.with_open_angle(form), ..typed };
+            return Typed {
+                form: self.with_open_angle(form),
+                ..typed
+            };
         }
         let [values, _] = self.spaces();
         if let Some(id) = self.environment.latest(values, name) {
@@ -166,7 +171,10 @@ impl Checker {
                 let instance = Instance::new(&mut self.unifier, &value.scheme.bound);
                 let form = self.unifier.resolve(&instance.form(&value.scheme.typed.form));
                 let typed = value.scheme.typed.clone();
-                Typed { form: self.with_open_angle(form), ..typed }
+                Typed {
+                    form: self.with_open_angle(form),
+                    ..typed
+                }
             }
             Meaning::Table(_) => {
                 let name = binding.name.clone();
@@ -263,7 +271,11 @@ impl Checker {
             let diagnostic = self.unlike_sides(op, (left, a), (right, b));
             return self.wrong(diagnostic);
         }
-        let unit = if a.unit.is_some() { a.unit.clone() } else { b.unit.clone() };
+        let unit = if a.unit.is_some() {
+            a.unit.clone()
+        } else {
+            b.unit.clone()
+        };
         let mut form = a.form.clone();
         if is_one(left) || is_one(right) {
             // 1+z is how one settles a frame by hand.
@@ -316,8 +328,14 @@ impl Checker {
     /// A root leaves a counting unit open: its error is how one counts.
     pub(super) fn with_open_tally(&mut self, form: Form) -> Form {
         let tally = |key: Key| (form::FIRST_TALLY..form::FIRST_BOUND).contains(&key);
-        let counted: Vec<Key> = form.parts().map(|(key, _)| key).filter(|key| tally(*key)).collect();
-        counted.into_iter().fold(form, |form, key| form.times(&self.unifier.fresh(Sort::Along(key))))
+        let counted: Vec<Key> = form
+            .parts()
+            .map(|(key, _)| key)
+            .filter(|key| tally(*key))
+            .collect();
+        counted.into_iter().fold(form, |form, key| {
+            form.times(&self.unifier.fresh(Sort::Along(key)))
+        })
     }
 
     fn infer_comparison(&mut self, first: &Expr, rest: &[(Spanned<ast::CompareOp>, Expr)]) -> Typed {
@@ -349,7 +367,9 @@ impl Checker {
     }
 
     fn infer_series(&mut self, elements: &[Expr]) -> Typed {
-        let Some((first, rest)) = elements.split_first() else { return Typed::quantity(Form::number()) };
+        let Some((first, rest)) = elements.split_first() else {
+            return Typed::quantity(Form::number());
+        };
         let head = self.infer_quantity(first);
         for element in rest {
             let typed = self.infer_quantity(element);
@@ -392,13 +412,19 @@ impl Checker {
         }
         let unit = typed.iter().rev().find_map(|part| part.unit.clone());
         let wrong = typed.iter().any(Typed::is_unknown);
-        if wrong { Typed::unknown() } else { typed[0].clone().shown_in(unit) }
+        if wrong {
+            Typed::unknown()
+        } else {
+            typed[0].clone().shown_in(unit)
+        }
     }
 
     /// A unit written once, last, serves the bare numbers before it.
     pub(super) fn infer_with_shared_unit(&mut self, parts: &[&Expr]) -> Vec<Typed> {
         let shared = parts.iter().rev().find_map(|part| literal_unit(part));
-        let Some(unit) = shared else { return parts.iter().map(|part| self.infer_quantity(part)).collect() };
+        let Some(unit) = shared else {
+            return parts.iter().map(|part| self.infer_quantity(part)).collect();
+        };
         let measure = self.measure(unit, true);
         let mut typed = Vec::new();
         for part in parts {
@@ -424,7 +450,9 @@ impl Checker {
     fn infer_field(&mut self, base: &Expr, field: &Name) -> Typed {
         match &base.kind {
             ExprKind::Name(table) => self.infer_column(table, base.span, field),
-            ExprKind::Call(form, arguments) if field.node == "at" => self.infer_place_of(form, arguments, base.span),
+            ExprKind::Call(form, arguments) if field.node == "at" => {
+                self.infer_place_of(form, arguments, base.span)
+            }
             _ => {
                 self.infer(base);
                 self.wrong(error::no_columns(base.span, field))

@@ -27,7 +27,11 @@ pub fn function(name: &str) -> Option<&'static Entry> {
 pub fn spellings(functions: bool) -> impl Iterator<Item = &'static str> {
     let index = index();
     let written = index.written.keys().copied().filter(move |_| functions);
-    let map = if functions { &index.functions } else { &index.values };
+    let map = if functions {
+        &index.functions
+    } else {
+        &index.values
+    };
     map.keys().copied().chain(written)
 }
 
@@ -41,14 +45,23 @@ struct Index {
 fn index() -> &'static Index {
     static INDEX: OnceLock<Index> = OnceLock::new();
     INDEX.get_or_init(|| {
-        let mut index =
-            Index { values: FxHashMap::default(), functions: FxHashMap::default(), written: FxHashMap::default() };
+        let mut index = Index {
+            values: FxHashMap::default(),
+            functions: FxHashMap::default(),
+            written: FxHashMap::default(),
+        };
         for entry in entries() {
-            let map = if entry.is_function() { &mut index.functions } else { &mut index.values };
+            let map = if entry.is_function() {
+                &mut index.functions
+            } else {
+                &mut index.values
+            };
             map.extend(entry.spellings().map(|spelling| (spelling, entry)));
         }
         for (number, chapter) in CHAPTERS.iter().enumerate() {
-            index.written.extend(names_of(chapter.text).map(|name| (name, number)));
+            index
+                .written
+                .extend(names_of(chapter.text).map(|name| (name, number)));
         }
         index
     })
@@ -61,7 +74,8 @@ fn names_of(text: &'static str) -> impl Iterator<Item = &'static str> {
             return Some(symbol.trim());
         }
         let end = line.find(|letter: char| !(letter.is_alphanumeric() || letter == '_'))?;
-        (end > 0 && (line[end..].starts_with('(') || line[end..].starts_with([' ', '=']))).then_some(&line[..end])
+        (end > 0 && (line[end..].starts_with('(') || line[end..].starts_with([' ', '='])))
+            .then_some(&line[..end])
     })
 }
 
@@ -72,7 +86,11 @@ pub fn signature(entry: &Entry) -> String {
         let name = SmolStr::new_static(argument.name);
         (name, field_unit(&argument.kind, ""), argument.default.is_some())
     });
-    let name = if entry.symbol.is_empty() { entry.name } else { entry.symbol };
+    let name = if entry.symbol.is_empty() {
+        entry.name
+    } else {
+        entry.symbol
+    };
     let unit = field_unit(&entry.result, entry.usual_unit);
     join_signature(name, entry.is_function().then(|| arguments.collect()), &unit)
 }
@@ -103,7 +121,12 @@ impl Checker {
             in_function: std::mem::take(&mut self.in_function),
         };
         let parsed = crate::parser::parse(chapter.text);
-        self.diagnostics.extend(parsed.diagnostics.into_iter().map(|one| (usize::from(source), one)));
+        self.diagnostics.extend(
+            parsed
+                .diagnostics
+                .into_iter()
+                .map(|one| (usize::from(source), one)),
+        );
         for statement in parsed.statements {
             self.statement(statement, &super::statement::Nothing);
         }
@@ -135,7 +158,9 @@ impl Checker {
 #[must_use]
 pub fn canonical(name: &str) -> &str {
     let written = zij_stdlib::prelude::written();
-    let found = written.iter().find(|item| !item.symbol.is_empty() && item.symbol == name);
+    let found = written
+        .iter()
+        .find(|item| !item.symbol.is_empty() && item.symbol == name);
     found.map_or(name, |item| item.name)
 }
 

@@ -57,7 +57,10 @@ impl Checker {
             }
         }
         if std::mem::replace(&mut self.needs_model, outer) {
-            let at = written.settings.first().map_or(written.span, |setting| setting.value.span);
+            let at = written
+                .settings
+                .first()
+                .map_or(written.span, |setting| setting.value.span);
             self.environment.model_used = used_before;
             self.report(error::model_on_a_model(at));
             sound = false;
@@ -68,7 +71,9 @@ impl Checker {
         }
         let all = self.all_given(parent, &gives);
         if let Err(objection) = model::admissible(base, &all) {
-            let place = objection.parameter.and_then(|id| gives.iter().position(|known| *known == id));
+            let place = objection
+                .parameter
+                .and_then(|id| gives.iter().position(|known| *known == id));
             let span = place.map_or(written.span, |place| spans[place]);
             self.report(error::inadmissible_model(span, &objection.message));
             return None;
@@ -82,14 +87,19 @@ impl Checker {
             if !self.rests_on.contains(&id) {
                 self.rests_on.push(id);
             }
-            let Meaning::Model(model) = &self.environment.binding(id).meaning else { return None };
+            let Meaning::Model(model) = &self.environment.binding(id).meaning else {
+                return None;
+            };
             return Some((model.base, Some(id)));
         }
         if let Some(base) = base(&name.node) {
             return Some((base, None));
         }
         if !self.lost.contains(&name.node) {
-            let own = self.environment.visible().filter(|(_, binding)| binding.space == Space::Model);
+            let own = self
+                .environment
+                .visible()
+                .filter(|(_, binding)| binding.space == Space::Model);
             let mut known: Vec<&str> = own.map(|(_, binding)| binding.name.as_str()).collect();
             known.extend(BASES.iter().map(|base| base.name));
             let diagnostic = error::unknown_model(name, &known);
@@ -145,7 +155,9 @@ impl Checker {
     }
 
     fn infer_setting_value(&mut self, setting: &Setting) -> Typed {
-        let Some(variable) = &setting.variable else { return self.infer_quantity(&setting.value) };
+        let Some(variable) = &setting.variable else {
+            return self.infer_quantity(&setting.value);
+        };
         self.locals.push(Local {
             name: variable.node.clone(),
             span: variable.span,
@@ -166,7 +178,9 @@ impl Checker {
         if self.is_duplicate(name, Space::Model) {
             return;
         }
-        let meaning = found.map_or(Meaning::Broken, |found| Meaning::Model(Arc::new(self.found_model(written, found))));
+        let meaning = found.map_or(Meaning::Broken, |found| {
+            Meaning::Model(Arc::new(self.found_model(written, found)))
+        });
         self.bind(name, Space::Model, meaning);
     }
 

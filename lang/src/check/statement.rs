@@ -4,8 +4,11 @@ use super::environment::{self, Function, Meaning, Place, Space, Table, UserUnit,
 use super::form::Form;
 use super::typed::{Generaliser, Instance, Kind, Measure, Scheme, Typed};
 use super::unify::Sort;
-use super::{BindingId, Checker, Head, Local, Outside, call, error, library};
-use crate::ast::{self, BinaryOp, Binding, Bracket, Definition as Written, Expr, ExprKind, Name, Parameter, Plot, Read, Statement, StatementKind, Text};
+use super::{BindingId, Checker, Head, Local, NoHead, Outside, call, error, library};
+use crate::ast::{
+    self, BinaryOp, Binding, Bracket, Definition as Written, Expr, ExprKind, Name, Parameter, Plot, Read,
+    Statement, StatementKind, Text,
+};
 use crate::source::{Source, Span};
 use smallvec::SmallVec;
 use smol_str::SmolStr;
@@ -119,8 +122,8 @@ impl Outside for Nothing {
         Err(format!("{path}: no files can be read here"))
     }
 
-    fn head(&self, path: &str) -> Result<Head, String> {
-        Err(format!("{path}: no files can be read here"))
+    fn head(&self, path: &str) -> Result<Head, NoHead> {
+        Err(NoHead::Unreadable(format!("{path}: no files can be read here")))
     }
 }
 
@@ -137,9 +140,13 @@ impl Checker {
             StatementKind::Value(definition) => {
                 self.value_statement(definition, false);
             }
-            StatementKind::Function(definition, parameters) => self.function_statement(definition, parameters),
+            StatementKind::Function(definition, parameters) => {
+                self.function_statement(definition, parameters)
+            }
             StatementKind::Result(definition) => self.result_statement(definition),
-            StatementKind::ResultOf(name, bracket, about) => self.result_of_statement(&name, bracket.as_ref(), about),
+            StatementKind::ResultOf(name, bracket, about) => {
+                self.result_of_statement(&name, bracket.as_ref(), about)
+            }
             StatementKind::Claim(label, claim) => self.claim_statement(label, claim, span),
             StatementKind::Table(plot) => self.table_statement(plot, span),
             StatementKind::Read(read) => self.read_statement(read, outside),
@@ -159,7 +166,10 @@ impl Checker {
     }
 
     fn not_yet(&mut self, span: Span, word: &str) {
-        let at = Span { start: span.start, end: span.start + word.len() as u32 };
+        let at = Span {
+            start: span.start,
+            end: span.start + word.len() as u32,
+        };
         self.report(error::not_yet(at, word));
     }
 
@@ -168,7 +178,9 @@ impl Checker {
         if self.at_prompt && !self.in_library {
             return false;
         }
-        let Some(id) = self.environment.latest(space, &name.node) else { return false };
+        let Some(id) = self.environment.latest(space, &name.node) else {
+            return false;
+        };
         let first = self.environment.binding(id).place;
         let here = (first.source == self.source).then_some(first.span);
         let elsewhere = self.sources[usize::from(first.source)].name.to_string();
@@ -186,7 +198,11 @@ impl Checker {
         let mut typed = self.infer_with_wheres(&definition.value, &definition.wheres);
         self.end_wheres(outer);
         typed = self.annotated(&definition, typed);
-        let instead = if given { self.instead_of(&definition, &typed) } else { None };
+        let instead = if given {
+            self.instead_of(&definition, &typed)
+        } else {
+            None
+        };
         self.bind_value(definition, typed, given, instead)
     }
 
@@ -204,14 +220,22 @@ impl Checker {
         }
         let scheme = self.scheme(typed, |sort| matches!(sort, Sort::Along(_)));
         let name = definition.name.clone();
-        let value = Value { definition, scheme, given, instead };
+        let value = Value {
+            definition,
+            scheme,
+            given,
+            instead,
+        };
         Some(self.bind(&name, space, Meaning::Value(Arc::new(value))))
     }
 
     fn scheme(&mut self, typed: Typed, binds: impl Fn(Sort) -> bool) -> Scheme {
         let mut generaliser = Generaliser::default();
         let form = generaliser.bind(&mut self.unifier, &typed.form, binds);
-        Scheme { typed: Typed { form, ..typed }, bound: generaliser.sorts(&self.unifier) }
+        Scheme {
+            typed: Typed { form, ..typed },
+            bound: generaliser.sorts(&self.unifier),
+        }
     }
 
     /// What the command line gives for an input, if it is of its dimension.
@@ -238,7 +262,12 @@ impl Checker {
                 None => typed,
             };
             let span = binding.name.span;
-            self.locals.push(Local { name: binding.name.node.clone(), span, typed, used: false });
+            self.locals.push(Local {
+                name: binding.name.node.clone(),
+                span,
+                typed,
+                used: false,
+            });
         }
         self.infer(value)
     }
@@ -260,7 +289,9 @@ impl Checker {
 
     /// A value with the unit that its definition announces.
     fn fits_annotation(&mut self, typed: Typed, value: Span, bracket: &Bracket) -> Typed {
-        let Some(measure) = self.measure(&bracket.unit, false) else { return Typed::unknown() };
+        let Some(measure) = self.measure(&bracket.unit, false) else {
+            return Typed::unknown();
+        };
         if typed.is_unknown() {
             return typed;
         }
@@ -276,14 +307,25 @@ impl Checker {
     fn function_statement(&mut self, definition: Written, parameters: Vec<Parameter>) {
         let outer = self.locals.len();
         let was_in_function = std::mem::replace(&mut self.in_function, true);
-        let takes: Vec<Typed> = parameters.iter().map(|parameter| self.parameter(parameter)).collect();
+        let takes: Vec<Typed> = parameters
+            .iter()
+            .map(|parameter| self.parameter(parameter))
+            .collect();
         for (parameter, typed) in parameters.iter().zip(&takes) {
-            if let Some(first) = self.locals[outer..].iter().find(|local| local.name == parameter.name.node) {
+            if let Some(first) = self.locals[outer..]
+                .iter()
+                .find(|local| local.name == parameter.name.node)
+            {
                 let first = first.span;
                 self.report(error::duplicate_name(&parameter.name, Some(first), ""));
             }
             let (name, span) = (parameter.name.node.clone(), parameter.name.span);
-            self.locals.push(Local { name, span, typed: typed.clone(), used: true });
+            self.locals.push(Local {
+                name,
+                span,
+                typed: typed.clone(),
+                used: true,
+            });
         }
         let inner = self.locals.len();
         let result = self.infer_with_wheres(&definition.value, &definition.wheres);
@@ -294,7 +336,13 @@ impl Checker {
         self.bind_function(definition, parameters, takes, result);
     }
 
-    fn bind_function(&mut self, definition: Written, parameters: Vec<Parameter>, takes: Vec<Typed>, result: Typed) {
+    fn bind_function(
+        &mut self,
+        definition: Written,
+        parameters: Vec<Parameter>,
+        takes: Vec<Typed>,
+        result: Typed,
+    ) {
         let space = self.spaces()[1];
         self.warn_of_library_name(&definition.name, true);
         if self.is_duplicate(&definition.name, space) {
@@ -307,9 +355,17 @@ impl Checker {
         };
         let takes = takes.into_iter().map(&mut bind).collect();
         let typed = bind(result);
-        let result = Scheme { typed, bound: generaliser.sorts(&self.unifier) };
+        let result = Scheme {
+            typed,
+            bound: generaliser.sorts(&self.unifier),
+        };
         let name = definition.name.clone();
-        let function = Function { definition, parameters, takes, result };
+        let function = Function {
+            definition,
+            parameters,
+            takes,
+            result,
+        };
         self.bind(&name, space, Meaning::Function(Arc::new(function)));
     }
 
@@ -325,8 +381,8 @@ impl Checker {
             let value = self.infer_quantity(default);
             let known = !value.is_unknown() && !typed.is_unknown();
             if known && self.unifier.unify(&value.form, &typed.form).is_err() {
-                let words = [self.describe(&typed.form), self.describe(&value.form)];
-                self.report(error::unlike_default(default.span, parameter.name.span, &words));
+                let diagnostic = self.unlike_default((default.span, &value), (parameter.name.span, &typed));
+                self.report(diagnostic);
             } else if typed.unit.is_none() {
                 return typed.shown_in(value.unit);
             }
@@ -345,7 +401,10 @@ impl Checker {
 
     fn result_of_statement(&mut self, name: &Name, bracket: Option<&Bracket>, about: Option<Text>) {
         let space = self.spaces()[0];
-        let expr = Expr { kind: ast::ExprKind::Name(name.node.clone()), span: name.span };
+        let expr = Expr {
+            kind: ast::ExprKind::Name(name.node.clone()),
+            span: name.span,
+        };
         let typed = self.infer(&expr);
         let typed = match bracket {
             Some(bracket) => self.fits_annotation(typed, name.span, bracket),
@@ -362,21 +421,40 @@ impl Checker {
         }
     }
 
-    fn show_binding(&mut self, id: BindingId, name: SmolStr, about: Option<SmolStr>, as_typed: Option<Typed>, place: Place) {
+    fn show_binding(
+        &mut self,
+        id: BindingId,
+        name: SmolStr,
+        about: Option<SmolStr>,
+        as_typed: Option<Typed>,
+        place: Place,
+    ) {
         self.environment.binding(id).used.set(true);
-        let Meaning::Value(value) = &self.environment.binding(id).meaning else { return };
+        let Meaning::Value(value) = &self.environment.binding(id).meaning else {
+            return;
+        };
         let about = about.or_else(|| value.definition.about.as_ref().map(|text| text.node.clone()));
         let value = Arc::clone(value);
         let typed = as_typed.unwrap_or_else(|| {
             let instance = Instance::new(&mut self.unifier, &value.scheme.bound);
             let typed = value.scheme.typed.clone();
-            Typed { form: instance.form(&typed.form), ..typed }
+            Typed {
+                form: instance.form(&typed.form),
+                ..typed
+            }
         });
         if typed.is_unknown() {
             return;
         }
         let face = self.keep_face(typed);
-        self.tasks.push(Task::Show(Show { result: true, name, output: Output::Binding(id), face, about, place }));
+        self.tasks.push(Task::Show(Show {
+            result: true,
+            name,
+            output: Output::Binding(id),
+            face,
+            about,
+            place,
+        }));
     }
 
     fn expression_statement(&mut self, value: Expr, wheres: Vec<Binding>) {
@@ -393,7 +471,10 @@ impl Checker {
 
     /// At the prompt `that` is the last value.
     fn bind_that(&mut self, value: &Expr, wheres: &[Binding], typed: &Typed) {
-        let name = Name { node: SmolStr::new_static("that"), span: value.span };
+        let name = Name {
+            node: SmolStr::new_static("that"),
+            span: value.span,
+        };
         let definition = Written {
             name: name.clone(),
             annotation: None,
@@ -403,19 +484,37 @@ impl Checker {
         };
         let rests_on = self.rests_on.clone();
         let scheme = self.scheme(typed.clone(), |sort| matches!(sort, Sort::Along(_)));
-        let meaning = Meaning::Value(Arc::new(Value { definition, scheme, given: false, instead: None }));
+        let meaning = Meaning::Value(Arc::new(Value {
+            definition,
+            scheme,
+            given: false,
+            instead: None,
+        }));
         let id = self.bind(&name, Space::Value, meaning);
         self.environment.binding(id).used.set(true);
         self.rests_on = rests_on;
     }
 
-    fn show_expression(&mut self, value: Expr, wheres: Vec<Binding>, typed: Typed, (result, about): (bool, Option<SmolStr>)) {
+    fn show_expression(
+        &mut self,
+        value: Expr,
+        wheres: Vec<Binding>,
+        typed: Typed,
+        (result, about): (bool, Option<SmolStr>),
+    ) {
         let place = self.place(value.span);
         let name = SmolStr::new(self.text(value.span));
         let face = self.keep_face(typed);
         let rests_on = std::mem::take(&mut self.rests_on);
         let output = Output::Expression(Arc::new((value, wheres)), self.environment.next(), rests_on);
-        self.tasks.push(Task::Show(Show { result, name, output, face, about, place }));
+        self.tasks.push(Task::Show(Show {
+            result,
+            name,
+            output,
+            face,
+            about,
+            place,
+        }));
     }
 
     fn table_statement(&mut self, plot: Plot, span: Span) {
@@ -424,8 +523,17 @@ impl Checker {
         let variable = over.clone();
         let (name, at) = (plot.variable.node.clone(), plot.variable.span);
         self.remember(at, &over);
-        self.locals.push(Local { name, span: at, typed: over, used: true });
-        let typed: Vec<Typed> = plot.columns.iter().map(|(column, _)| self.infer(column)).collect();
+        self.locals.push(Local {
+            name,
+            span: at,
+            typed: over,
+            used: true,
+        });
+        let typed: Vec<Typed> = plot
+            .columns
+            .iter()
+            .map(|(column, _)| self.infer(column))
+            .collect();
         self.locals.pop();
         if !sound || typed.iter().any(Typed::is_unknown) {
             return;
@@ -435,7 +543,11 @@ impl Checker {
         for ((column, about), typed) in plot.columns.iter().zip(typed) {
             let name = SmolStr::new(self.text(head_span(column)));
             let about = about.as_ref().map(|text| text.node.clone());
-            columns.push(Column { name, face: self.keep_face(typed), about });
+            columns.push(Column {
+                name,
+                face: self.keep_face(typed),
+                about,
+            });
         }
         let task = TableTask {
             plot: Arc::new(plot),
@@ -453,7 +565,10 @@ impl Checker {
         let columns = match outside.head(&read.path.node) {
             Ok(head) => Some(self.columns(&read, head)),
             Err(reason) => {
-                self.report(error::cannot_read(read.path.span, &reason));
+                self.report(match reason {
+                    NoHead::Unreadable(reason) => error::cannot_read(read.path.span, &reason),
+                    NoHead::Malformed(reason) => error::bad_data(read.path.span, &reason),
+                });
                 None
             }
         };
@@ -496,13 +611,20 @@ impl Checker {
             };
             let factor = measure.map_or(1.0, |measure| measure.factor);
             let scheme = self.scheme(typed, |sort| matches!(sort, Sort::Along(_)));
-            columns.push(environment::Column { name: name.into(), scheme, factor, place });
+            columns.push(environment::Column {
+                name: name.into(),
+                scheme,
+                factor,
+                place,
+            });
         }
         columns
     }
 
     fn measure_of_head(&mut self, read: &Read, column: &str, text: &str) -> Option<Arc<Measure>> {
-        let resolved = crate::parser::parse_unit(text).ok().and_then(|unit| super::units::resolve_library(&unit));
+        let resolved = crate::parser::parse_unit(text)
+            .ok()
+            .and_then(|unit| super::units::resolve_library(&unit));
         if resolved.is_none() {
             self.report(error::unit_of_column(read.path.span, column, text));
         }
@@ -517,7 +639,12 @@ impl Checker {
             let typed = column.scheme.typed.clone();
             let form = instance.form(&typed.form);
             let typed = Typed { form, ..typed };
-            self.locals.push(Local { name: column.name.clone(), span: only.span, typed, used: true });
+            self.locals.push(Local {
+                name: column.name.clone(),
+                span: only.span,
+                typed,
+                used: true,
+            });
         }
         self.infer_truth(only);
         self.locals.truncate(outer);
@@ -557,9 +684,20 @@ impl Checker {
             self.report(error::unit_is_no_literal(value.span));
             return;
         };
-        let measure = Measure { text: name.node.clone(), factor, slashed: SmallVec::new(), ..measure };
+        let measure = Measure {
+            text: name.node.clone(),
+            factor,
+            slashed: SmallVec::new(),
+            ..measure
+        };
         self.measures.clear();
-        self.environment.units.insert(name.node.clone(), UserUnit { measure, place: self.place(name.span) });
+        self.environment.units.insert(
+            name.node.clone(),
+            UserUnit {
+                measure,
+                place: self.place(name.span),
+            },
+        );
     }
 
     /// The size and dimension of what a unit is defined as.
@@ -585,12 +723,18 @@ impl Checker {
                 let factor = quantity.unit.as_ref().map_or(1.0, |unit| self.size_of(unit));
                 Some(quantity.number.value * factor)
             }
-            ExprKind::Group(inner) | ExprKind::Express(inner, Bracket { conversion: None, .. }) => self.fold(inner),
+            ExprKind::Group(inner) | ExprKind::Express(inner, Bracket { conversion: None, .. }) => {
+                self.fold(inner)
+            }
             ExprKind::Name(name) => match library::value(name)?.definition {
-                Definition::Constant(value, _) if self.environment.latest(Space::Value, name).is_none() => Some(value),
+                Definition::Constant(value, _) if self.environment.latest(Space::Value, name).is_none() => {
+                    Some(value)
+                }
                 _ => None,
             },
-            ExprKind::Unary(op, inner) if op.node == ast::UnaryOp::Negate => self.fold(inner).map(|value| -value),
+            ExprKind::Unary(op, inner) if op.node == ast::UnaryOp::Negate => {
+                self.fold(inner).map(|value| -value)
+            }
             ExprKind::Binary(op, left, right) => {
                 let (a, b) = (self.fold(left)?, self.fold(right)?);
                 Some(match op.node {
@@ -611,7 +755,12 @@ impl Checker {
             return false;
         }
         let unit = self.environment.units.get(&name.node).map(|unit| unit.place);
-        let tally = self.environment.tallies.iter().find(|(known, _)| *known == name.node).map(|(_, place)| *place);
+        let tally = self
+            .environment
+            .tallies
+            .iter()
+            .find(|(known, _)| *known == name.node)
+            .map(|(_, place)| *place);
         if let Some(first) = unit.or(tally) {
             let here = (first.source == self.source).then_some(first.span);
             let elsewhere = self.sources[usize::from(first.source)].name.to_string();
@@ -640,20 +789,33 @@ impl Checker {
         if self.in_library {
             return;
         }
-        let known = if function { library::function(&name.node) } else { library::value(&name.node) }.is_some();
-        let word = function && (call::BINDING_FORMS.iter().any(|(word, _)| *word == name.node)
-            || call::series_function(&name.node).is_some());
+        let known = if function {
+            library::function(&name.node)
+        } else {
+            library::value(&name.node)
+        }
+        .is_some();
+        let word = function
+            && (call::BINDING_FORMS.iter().any(|(word, _)| *word == name.node)
+                || call::series_function(&name.node).is_some());
         let [values, functions] = self.spaces();
         let space = if function { functions } else { values };
         if (known || word) && self.environment.latest(space, &name.node).is_none() {
-            self.report(error::rebinds_library(name, if function { "function" } else { "value" }));
+            self.report(error::rebinds_library(
+                name,
+                if function { "function" } else { "value" },
+            ));
         }
     }
 
     /// Warns of values and functions that nothing rests on, in a sheet that
     /// shows something.
     pub(super) fn warn_of_unused(&mut self, source: u16, from: BindingId) {
-        if self.at_prompt || self.tasks.is_empty() {
+        let wrong = self
+            .diagnostics
+            .iter()
+            .any(|(_, diagnostic)| diagnostic.is_error());
+        if self.at_prompt || self.tasks.is_empty() || wrong {
             return;
         }
         let unused: Vec<(Span, SmolStr)> = self.environment.bindings[from as usize..]
@@ -663,7 +825,8 @@ impl Checker {
             .map(|binding| (binding.place.span, binding.name.clone()))
             .collect();
         for (span, name) in unused {
-            self.diagnostics.push((usize::from(source), error::unused(span, &name)));
+            self.diagnostics
+                .push((usize::from(source), error::unused(span, &name)));
         }
     }
 
@@ -676,7 +839,9 @@ impl Checker {
             Task::Claim(_) | Task::Table(_) => true,
             Task::Help(_) => false,
         };
-        let Some(used) = self.environment.model_used.filter(|_| !stated) else { return };
+        let Some(used) = self.environment.model_used.filter(|_| !stated) else {
+            return;
+        };
         if self.tasks.iter().any(is_output) {
             let warning = error::model_not_stated(used.span);
             self.diagnostics.push((usize::from(used.source), warning));

@@ -59,19 +59,29 @@ impl Typed {
     /// A quantity without a unit to show it in.
     #[must_use]
     pub fn quantity(form: Form) -> Typed {
-        Typed { kind: Kind::Quantity, form, unit: None }
+        Typed {
+            kind: Kind::Quantity,
+            form,
+            unit: None,
+        }
     }
 
     /// A truth value.
     #[must_use]
     pub fn truth() -> Typed {
-        Typed { kind: Kind::Truth, ..Typed::quantity(Form::number()) }
+        Typed {
+            kind: Kind::Truth,
+            ..Typed::quantity(Form::number())
+        }
     }
 
     /// Wrong and reported.
     #[must_use]
     pub fn unknown() -> Typed {
-        Typed { kind: Kind::Unknown, ..Typed::quantity(Form::number()) }
+        Typed {
+            kind: Kind::Unknown,
+            ..Typed::quantity(Form::number())
+        }
     }
 
     /// Shown in this unit.
@@ -116,7 +126,10 @@ impl Generaliser {
     }
 
     fn place(&self, key: Key) -> Option<Key> {
-        self.keys.iter().position(|known| *known == key).map(|place| place as Key)
+        self.keys
+            .iter()
+            .position(|known| *known == key)
+            .map(|place| place as Key)
     }
 
     /// The sorts of what was bound.
@@ -134,7 +147,9 @@ pub struct Instance {
 impl Instance {
     /// One for a use of a scheme.
     pub fn new(unifier: &mut Unifier, bound: &[Sort]) -> Instance {
-        Instance { fresh: bound.iter().map(|sort| unifier.fresh(*sort)).collect() }
+        Instance {
+            fresh: bound.iter().map(|sort| unifier.fresh(*sort)).collect(),
+        }
     }
 
     /// A form of the scheme for this use.
@@ -144,8 +159,10 @@ impl Instance {
             return form.clone();
         }
         let bound = |key: Key| (FIRST_BOUND..FIRST_UNKNOWN).contains(&key);
-        form.parts().filter(|(key, _)| bound(*key)).fold(form.without(bound), |form, (key, exponent)| {
-            form.merge(&self.fresh[(key - FIRST_BOUND) as usize], exponent)
-        })
+        form.parts()
+            .filter(|(key, _)| bound(*key))
+            .fold(form.without(bound), |form, (key, exponent)| {
+                form.merge(&self.fresh[(key - FIRST_BOUND) as usize], exponent)
+            })
     }
 }

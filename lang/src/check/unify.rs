@@ -19,8 +19,8 @@
 //! usual bookkeeping of let-polymorphism; Kennedy 1996, “Relational
 //! parametricity and units of measure”, has the group case).
 
-use super::infer::COMOVING;
 use super::form::{FIRST_BOUND, FIRST_UNKNOWN, Form, Key, divide, is_zero};
+use super::infer::COMOVING;
 
 /// What an unknown may stand for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -78,13 +78,20 @@ impl Unifier {
     /// A new unknown of a level.
     pub fn fresh_at(&mut self, sort: Sort, level: u8) -> Form {
         let key = FIRST_UNKNOWN + self.unknowns.len() as Key;
-        self.unknowns.push(Unknown { sort, level, value: None });
+        self.unknowns.push(Unknown {
+            sort,
+            level,
+            value: None,
+        });
         Form::of(key)
     }
 
     /// The unknowns there are, and a clean record of what is touched.
     pub fn mark(&mut self) -> Mark {
-        Mark { unknowns: self.unknowns.len(), touched: std::mem::take(&mut self.touched) }
+        Mark {
+            unknowns: self.unknowns.len(),
+            touched: std::mem::take(&mut self.touched),
+        }
     }
 
     /// Forgets the unknowns since `mark`, if none of the sheet's rests on them.
@@ -142,10 +149,16 @@ impl Unifier {
         if form.is_number() {
             return Ok(());
         }
-        if form.parts().any(|(key, _)| (FIRST_BOUND..FIRST_UNKNOWN).contains(&key)) {
+        if form
+            .parts()
+            .any(|(key, _)| (FIRST_BOUND..FIRST_UNKNOWN).contains(&key))
+        {
             return Err(Unlike);
         }
-        let free = form.parts().rev().find(|(key, _)| *key >= FIRST_UNKNOWN && self.sort(*key) == Sort::Any);
+        let free = form
+            .parts()
+            .rev()
+            .find(|(key, _)| *key >= FIRST_UNKNOWN && self.sort(*key) == Sort::Any);
         if let Some((key, exponent)) = free {
             self.solve(key, exponent, form);
             return Ok(());
@@ -155,7 +168,8 @@ impl Unifier {
 
     /// No `Any` is left: each generator is an equation of its own.
     fn annul_each(&mut self, form: &Form) -> Result<(), Unlike> {
-        let along = |this: &Unifier, key: Key| (key >= FIRST_UNKNOWN).then(|| this.sort(key).along()).flatten();
+        let along =
+            |this: &Unifier, key: Key| (key >= FIRST_UNKNOWN).then(|| this.sort(key).along()).flatten();
         for (generator, _) in form.parts().filter(|(key, _)| *key < FIRST_UNKNOWN) {
             if !form.unknowns().any(|key| along(self, key) == Some(generator)) {
                 return Err(Unlike);
@@ -163,7 +177,9 @@ impl Unifier {
         }
         let mut done: Vec<Key> = Vec::new();
         for (key, _) in form.parts().rev() {
-            let Some(generator) = along(self, key) else { continue };
+            let Some(generator) = along(self, key) else {
+                continue;
+            };
             if done.contains(&generator) {
                 continue;
             }
@@ -180,7 +196,9 @@ impl Unifier {
     fn easiest(&self, part: &Form) -> (Key, num_rational::Ratio<i32>) {
         let unknowns = || part.parts().rev().filter(|(key, _)| *key >= FIRST_UNKNOWN);
         let afresh = unknowns().find(|(key, _)| matches!(self.sort(*key), Sort::Along(_)));
-        afresh.or_else(|| unknowns().next()).expect("the part has an unknown along its generator")
+        afresh
+            .or_else(|| unknowns().next())
+            .expect("the part has an unknown along its generator")
     }
 
     /// `key^exponent · rest = 1`, so `key = rest^(-1/exponent)`.
@@ -207,7 +225,13 @@ impl Unifier {
         if !resolved.is_open() {
             return resolved;
         }
-        let along = |key: Key| if key >= FIRST_UNKNOWN { self.sort(key).along() } else { None };
+        let along = |key: Key| {
+            if key >= FIRST_UNKNOWN {
+                self.sort(key).along()
+            } else {
+                None
+            }
+        };
         let frame = resolved.unknowns().any(|key| along(key) == Some(COMOVING));
         resolved.without(|key| along(key).is_some() || (frame && key == COMOVING))
     }
@@ -220,7 +244,9 @@ impl Unifier {
             return resolved;
         }
         let sort = |key: Key| (key >= FIRST_UNKNOWN).then(|| self.sort(key));
-        let frame = resolved.unknowns().any(|key| sort(key) == Some(Sort::Along(COMOVING)));
+        let frame = resolved
+            .unknowns()
+            .any(|key| sort(key) == Some(Sort::Along(COMOVING)));
         let of_frame = |key: Key| key == COMOVING || sort(key).and_then(Sort::along) == Some(COMOVING);
         resolved.without(|key| matches!(sort(key), Some(Sort::Along(_))) || (frame && of_frame(key)))
     }
@@ -234,7 +260,9 @@ impl Unifier {
             return true;
         }
         let along = |key: Key| (key >= FIRST_UNKNOWN).then(|| self.sort(key).along()).flatten();
-        let mut fixed = quotient.parts().filter(|(key, exponent)| *key < FIRST_UNKNOWN && !is_zero(*exponent));
+        let mut fixed = quotient
+            .parts()
+            .filter(|(key, exponent)| *key < FIRST_UNKNOWN && !is_zero(*exponent));
         fixed.all(|(generator, _)| quotient.unknowns().any(|key| along(key) == Some(generator)))
     }
 

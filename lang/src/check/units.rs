@@ -34,7 +34,12 @@ impl Part {
     }
 
     fn little_h() -> Part {
-        Part { factor: 1.0, form: Form::of(LITTLE_H), framed: false, names_length: false }
+        Part {
+            factor: 1.0,
+            form: Form::of(LITTLE_H),
+            framed: false,
+            names_length: false,
+        }
     }
 }
 
@@ -109,7 +114,9 @@ impl Checker {
             let name = factor.name.node.as_str();
             let user = || self.user_unit(name);
             let little_h = || (name == "h").then(Part::little_h);
-            user().or_else(little_h).or_else(|| units::find(name).map(Part::of))
+            user()
+                .or_else(little_h)
+                .or_else(|| units::find(name).map(Part::of))
         };
         let parts: Option<Vec<Part>> = unit.factors.iter().map(part).collect();
         parts.map_or(f64::NAN, |parts| as_magnitude(product(unit, &parts)).factor)
@@ -117,7 +124,12 @@ impl Checker {
 
     fn user_unit(&self, name: &str) -> Option<Part> {
         if let Some(key) = self.environment.tally(name) {
-            return Some(Part { factor: 1.0, form: Form::of(key), framed: false, names_length: false });
+            return Some(Part {
+                factor: 1.0,
+                form: Form::of(key),
+                framed: false,
+                names_length: false,
+            });
         }
         let UserUnit { measure, .. } = self.environment.units.get(name)?;
         Some(Part {
@@ -138,8 +150,14 @@ impl Checker {
             return error::value_as_unit(name, factor.after_slash);
         }
         let mut near = units::near(&name.node);
-        let own = self.environment.units.keys().chain(self.environment.tallies.iter().map(|(name, _)| name));
-        let mut own: Vec<&SmolStr> = own.filter(|own| strsim::osa_distance(own, &name.node) <= 2).collect();
+        let own = self
+            .environment
+            .units
+            .keys()
+            .chain(self.environment.tallies.iter().map(|(name, _)| name));
+        let mut own: Vec<&SmolStr> = own
+            .filter(|own| strsim::osa_distance(own, &name.node) <= 2)
+            .collect();
         own.sort();
         near.splice(0..0, own.into_iter().map(ToString::to_string));
         error::unknown_unit(name, &near, units::counting(&name.node))
@@ -148,7 +166,9 @@ impl Checker {
     /// Whether a tight `/word` is also a value of another size.
     fn is_ambiguous(&mut self, unit: &Unit) -> bool {
         let slashed = || unit.factors.iter().filter(|factor| factor.after_slash);
-        let clash = slashed().find(|factor| self.is_value_of_another_size(&factor.name.node)).cloned();
+        let clash = slashed()
+            .find(|factor| self.is_value_of_another_size(&factor.name.node))
+            .cloned();
         if let Some(factor) = &clash {
             self.report(error::ambiguous_slash(&factor.name));
         }
@@ -160,7 +180,9 @@ impl Checker {
         if self.local(name).is_some() || self.environment.latest(values, name).is_some() {
             return true;
         }
-        let Some(entry) = library::value(name) else { return false };
+        let Some(entry) = library::value(name) else {
+            return false;
+        };
         let same = |found: units::Found| match entry.definition {
             zij_stdlib::catalogue::Definition::Constant(value, _) => {
                 value == found.factor && entry.result.dimension == found.unit.dimension

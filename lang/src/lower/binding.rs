@@ -15,10 +15,12 @@ impl Lowering<'_> {
         place: bool,
         span: Span,
     ) -> NodeId {
-        let Some(parts) = binding_parts(arguments) else { return self.missing(span) };
+        let Some(parts) = binding_parts(arguments) else {
+            return self.missing(span);
+        };
         let (from, to) = self.lower_bounds(form, parts.over);
         let (body, captures) = self.body(parts.variable, |this| {
-            let left = this.lower(parts.body);
+            let left = this.lower(&parts.body);
             match parts.right {
                 None => left,
                 Some(Right(right)) => {
@@ -37,12 +39,23 @@ impl Lowering<'_> {
             (BindingForm::Minimum, true) => Form::MinimumAt,
             (BindingForm::Derivative, _) => Form::Derivative,
         };
-        self.emit(Op::Bind(Box::new(Bind { form, body, captures, from, to })), span)
+        self.emit(
+            Op::Bind(Box::new(Bind {
+                form,
+                body,
+                captures,
+                from,
+                to,
+            })),
+            span,
+        )
     }
 
     fn lower_bounds(&mut self, form: BindingForm, over: &Expr) -> (NodeId, NodeId) {
         match &over.kind {
-            ExprKind::Range(range) if form != BindingForm::Sum => (self.lower(&range.from), self.lower(&range.to)),
+            ExprKind::Range(range) if form != BindingForm::Sum => {
+                (self.lower(&range.from), self.lower(&range.to))
+            }
             _ => {
                 let node = self.lower(over);
                 (node, node)
@@ -60,11 +73,19 @@ impl Lowering<'_> {
         self.builders.push(Builder::new(outer, 1));
         self.level = self.builders.len() - 1;
         let input = self.emit(Op::Input(0), variable.span);
-        self.locals.push((variable.node.clone(), At { level: self.level, node: input }));
+        self.locals.push((
+            variable.node.clone(),
+            At {
+                level: self.level,
+                node: input,
+            },
+        ));
         let result = work(self);
         self.locals.pop();
         self.level = outer;
-        let Some(mut builder) = self.builders.pop() else { return (0, Vec::new()) };
+        let Some(mut builder) = self.builders.pop() else {
+            return (0, Vec::new());
+        };
         for key in &builder.remembered {
             self.memo.remove(key);
         }

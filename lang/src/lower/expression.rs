@@ -1,7 +1,9 @@
 //! Expressions to nodes.
 
 use super::{At, Lowering, MAX_CALLS, MORE_STACK, RED_ZONE, Scope};
-use crate::ast::{self, Argument, BinaryOp, Bracket, Conversion, Expr, ExprKind, LogicalOp, Name, Number, UnaryOp};
+use crate::ast::{
+    self, Argument, BinaryOp, Bracket, Conversion, Expr, ExprKind, LogicalOp, Name, Number, UnaryOp,
+};
 use crate::check::call::{self, SeriesFunction};
 use crate::check::infer::{is_dex, written_rational};
 use crate::check::{BindingId, Meaning, Note, Place, Space, library};
@@ -69,7 +71,10 @@ impl Lowering<'_> {
     }
 
     fn note(&self, span: Span) -> Option<&Note> {
-        self.checker.notes.get(&Place { source: self.scope.source, span })
+        self.checker.notes.get(&Place {
+            source: self.scope.source,
+            span,
+        })
     }
 
     fn literal(&mut self, number: &Number, unit: Option<&ast::Unit>, span: Span) -> NodeId {
@@ -228,28 +233,55 @@ impl Lowering<'_> {
 
     fn lower_user_call(&mut self, id: BindingId, arguments: &[Argument], span: Span) -> NodeId {
         let binding = self.checker.environment.binding(id);
-        let Meaning::Function(function) = &binding.meaning else { return self.missing(span) };
+        let Meaning::Function(function) = &binding.meaning else {
+            return self.missing(span);
+        };
         let function = Arc::clone(function);
         let (source, in_library) = (binding.place.source, binding.space == Space::LibraryFunction);
         if self.calls >= MAX_CALLS {
             self.too_large = Some((self.scope.source, span));
             return 0;
         }
-        let names: Vec<&str> = function.parameters.iter().map(|parameter| parameter.name.node.as_str()).collect();
+        let names: Vec<&str> = function
+            .parameters
+            .iter()
+            .map(|parameter| parameter.name.node.as_str())
+            .collect();
         let values: Vec<Option<At>> = in_order(&names, arguments)
             .into_iter()
-            .map(|value| value.map(|value| At { level: self.level, node: self.lower(value) }))
+            .map(|value| {
+                value.map(|value| At {
+                    level: self.level,
+                    node: self.lower(value),
+                })
+            })
             .collect();
-        let blame = self.scope.blame.or(in_library.then_some((self.scope.source, span)));
-        let scope =
-            Scope { limit: id, source, base: self.locals.len(), in_library, blame, table: None, context: self.scope.context };
+        let blame = self
+            .scope
+            .blame
+            .or(in_library.then_some((self.scope.source, span)));
+        let scope = Scope {
+            limit: id,
+            source,
+            base: self.locals.len(),
+            in_library,
+            blame,
+            table: None,
+            context: self.scope.context,
+        };
         let outer = std::mem::replace(&mut self.scope, scope);
         let depth = self.locals.len();
         self.calls += 1;
         for (parameter, value) in function.parameters.iter().zip(values) {
             let at = value.unwrap_or_else(|| {
-                let node = parameter.default.as_ref().map_or(0, |default| self.lower(default));
-                At { level: self.level, node }
+                let node = parameter
+                    .default
+                    .as_ref()
+                    .map_or(0, |default| self.lower(default));
+                At {
+                    level: self.level,
+                    node,
+                }
             });
             self.locals.push((parameter.name.node.clone(), at));
         }
@@ -260,7 +292,12 @@ impl Lowering<'_> {
         node
     }
 
-    fn lower_series_function(&mut self, function: SeriesFunction, arguments: &[Argument], span: Span) -> NodeId {
+    fn lower_series_function(
+        &mut self,
+        function: SeriesFunction,
+        arguments: &[Argument],
+        span: Span,
+    ) -> NodeId {
         let nodes: Vec<NodeId> = arguments
             .iter()
             .filter_map(|argument| match argument {
@@ -274,8 +311,12 @@ impl Lowering<'_> {
             SeriesFunction::Median => Reduction::Median,
             SeriesFunction::Std => Reduction::Std,
             SeriesFunction::Count => self.count_of(arguments),
-            SeriesFunction::Min if nodes.len() > 1 => return self.extreme(ast::CompareOp::LessOrEqual, &nodes, span),
-            SeriesFunction::Max if nodes.len() > 1 => return self.extreme(ast::CompareOp::GreaterOrEqual, &nodes, span),
+            SeriesFunction::Min if nodes.len() > 1 => {
+                return self.extreme(ast::CompareOp::LessOrEqual, &nodes, span);
+            }
+            SeriesFunction::Max if nodes.len() > 1 => {
+                return self.extreme(ast::CompareOp::GreaterOrEqual, &nodes, span);
+            }
             SeriesFunction::Min => Reduction::Min,
             SeriesFunction::Max => Reduction::Max,
             SeriesFunction::Sort => return self.emit(Op::Sort(nodes[0]), span),
@@ -291,7 +332,11 @@ impl Lowering<'_> {
             Argument::Positional(value) | Argument::Named(_, value) => is_truth(ungrouped(value)),
             Argument::Equation(..) => false,
         });
-        if truth { Reduction::CountTrue } else { Reduction::Count }
+        if truth {
+            Reduction::CountTrue
+        } else {
+            Reduction::Count
+        }
     }
 
     fn extreme(&mut self, op: ast::CompareOp, nodes: &[NodeId], span: Span) -> NodeId {
@@ -321,7 +366,9 @@ impl Lowering<'_> {
     /// A column of a table, with the rows that `only` keeps; always in the
     /// main block.
     fn column(&mut self, id: BindingId, field: &str, span: Span) -> NodeId {
-        let Meaning::Table(table) = &self.checker.environment.binding(id).meaning else { return self.missing(span) };
+        let Meaning::Table(table) = &self.checker.environment.binding(id).meaning else {
+            return self.missing(span);
+        };
         let table = Arc::clone(table);
         let Some(place) = table.columns.iter().position(|column| column.name == field) else {
             return self.missing(span);
@@ -346,7 +393,9 @@ impl Lowering<'_> {
     /// A column that stands bare inside `only`.
     fn bare_column(&mut self, name: &str, span: Span) -> Option<NodeId> {
         let id = self.scope.table?;
-        let Meaning::Table(table) = &self.checker.environment.binding(id).meaning else { return None };
+        let Meaning::Table(table) = &self.checker.environment.binding(id).meaning else {
+            return None;
+        };
         let place = table.columns.iter().position(|column| column.name == name)?;
         Some(self.raw_column(id, place, span))
     }
@@ -371,11 +420,16 @@ impl Lowering<'_> {
         self.emit(Op::Binary(op, a, b), span)
     }
 
-    fn lower_comparison(&mut self, first: &Expr, rest: &[(crate::source::Spanned<ast::CompareOp>, Expr)], span: Span) -> NodeId {
-        let mut left = self.lower(first);
+    fn lower_comparison(
+        &mut self,
+        first: &Expr,
+        rest: &[(crate::source::Spanned<ast::CompareOp>, Expr)],
+        span: Span,
+    ) -> NodeId {
+        let mut left = self.lower_compared(first);
         let mut all = None;
         for (op, right) in rest {
-            let right = self.lower(right);
+            let right = self.lower_compared(right);
             let one = self.emit(Op::Compare(op.node, left, right), span);
             all = Some(match all {
                 None => one,
@@ -384,6 +438,18 @@ impl Lowering<'_> {
             left = right;
         }
         all.unwrap_or(left)
+    }
+
+    /// A written ∞ is beyond every number, and nothing that never comes.
+    fn lower_compared(&mut self, expr: &Expr) -> NodeId {
+        let (inner, sign) = match &expr.kind {
+            ExprKind::Unary(op, inner) if op.node == UnaryOp::Negate => (&**inner, -1.0),
+            _ => (expr, 1.0),
+        };
+        match inner.kind {
+            ExprKind::Infinity => self.constant(sign * f64::MAX, expr.span),
+            _ => self.lower(expr),
+        }
     }
 
     fn lower_range(&mut self, range: &ast::Range, span: Span) -> NodeId {
@@ -423,7 +489,14 @@ impl Lowering<'_> {
         }
     }
 
-    fn cross(&mut self, node: NodeId, sign: i32, names: &[Name], powers: &[Ratio<i32>], span: Span) -> NodeId {
+    fn cross(
+        &mut self,
+        node: NodeId,
+        sign: i32,
+        names: &[Name],
+        powers: &[Ratio<i32>],
+        span: Span,
+    ) -> NodeId {
         let mut constants = Vec::new();
         for name in names {
             constants.push(match library::value(&name.node) {
@@ -447,9 +520,10 @@ fn in_order<'a>(names: &[&str], arguments: &'a [Argument]) -> Vec<Option<&'a Exp
     for argument in arguments {
         let (place, value) = match argument {
             Argument::Positional(value) => (next, value),
-            Argument::Named(word, value) => {
-                (names.iter().position(|name| *name == word.node).unwrap_or(next), value)
-            }
+            Argument::Named(word, value) => (
+                names.iter().position(|name| *name == word.node).unwrap_or(next),
+                value,
+            ),
             Argument::Equation(..) => continue,
         };
         next = place + 1;

@@ -39,14 +39,21 @@ impl Lowering<'_> {
     /// The number of the model in force inside `under`.
     pub(super) fn context_of(&mut self, written: &ast::Model) -> ContextId {
         let has_locals = self.locals.len() > self.scope.base;
-        let level = if has_locals { self.level } else { self.contexts[0].level };
+        let level = if has_locals {
+            self.level
+        } else {
+            self.contexts[0].level
+        };
         let outer = std::mem::replace(&mut self.level, level);
         let node = match (written.settings.is_empty(), self.user_model(&written.base.node)) {
             (true, Some(id)) => self.named_model(id),
             (_, parent) => self.written_model(written, parent),
         };
         self.level = outer;
-        let known = self.contexts.iter().position(|at| at.level == level && at.node == node);
+        let known = self
+            .contexts
+            .iter()
+            .position(|at| at.level == level && at.node == node);
         known.unwrap_or_else(|| {
             self.contexts.push(At { level, node });
             self.contexts.len() - 1
@@ -54,7 +61,9 @@ impl Lowering<'_> {
     }
 
     fn user_model(&self, name: &str) -> Option<BindingId> {
-        self.checker.environment.find(Space::Model, name, self.scope.limit)
+        self.checker
+            .environment
+            .find(Space::Model, name, self.scope.limit)
     }
 
     /// A model of the sheet, once, in the main block.
@@ -62,7 +71,9 @@ impl Lowering<'_> {
         if let Some(known) = self.memo.get(&(id, 0)) {
             return self.import(*known);
         }
-        let Meaning::Model(model) = &self.checker.environment.binding(id).meaning else { return 0 };
+        let Meaning::Model(model) = &self.checker.environment.binding(id).meaning else {
+            return 0;
+        };
         let model = Arc::clone(model);
         let outer = std::mem::replace(&mut self.level, 0);
         let node = self.model_node(&model);
@@ -93,7 +104,9 @@ impl Lowering<'_> {
 
     /// What a model of the sheet gives, with the models it starts from.
     fn given_of(&mut self, model: &Model) -> Given {
-        let parent = model.parent.map(|id| self.checker.environment.binding(id).meaning.clone());
+        let parent = model
+            .parent
+            .map(|id| self.checker.environment.binding(id).meaning.clone());
         let mut given = match parent {
             Some(Meaning::Model(parent)) => self.given_of(&parent),
             Some(_) | None => Given::default(),
@@ -116,7 +129,9 @@ impl Lowering<'_> {
     /// Puts a `with` list over what was given before.
     fn settle(&mut self, given: &mut Given, settings: &[Setting]) {
         for setting in settings {
-            let Some((id, _)) = parameter(&setting.name.node) else { continue };
+            let Some((id, _)) = parameter(&setting.name.node) else {
+                continue;
+            };
             match &setting.variable {
                 None => {
                     let node = self.lower(&setting.value);
@@ -132,7 +147,11 @@ impl Lowering<'_> {
     }
 
     fn emit_model(&mut self, base: &'static Base, given: Given, span: Span) -> NodeId {
-        let node = ModelNode { base, settings: given.numbers, function: given.function };
+        let node = ModelNode {
+            base,
+            settings: given.numbers,
+            function: given.function,
+        };
         self.emit(Op::Model(Box::new(node)), span)
     }
 }

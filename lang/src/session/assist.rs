@@ -38,9 +38,15 @@ impl Session {
     /// word starts.
     #[must_use]
     pub fn complete(&self, line: &str, cursor: usize) -> (usize, Vec<Completion>) {
-        let Some(before) = line.get(..cursor) else { return (cursor, Vec::new()) };
+        let Some(before) = line.get(..cursor) else {
+            return (cursor, Vec::new());
+        };
         let is_part = |letter: char| letter.is_alphanumeric() || letter == '_' || letter == '⊙';
-        let start = before.char_indices().rev().take_while(|(_, letter)| is_part(*letter)).last();
+        let start = before
+            .char_indices()
+            .rev()
+            .take_while(|(_, letter)| is_part(*letter))
+            .last();
         let start = start.map_or(cursor, |(at, _)| at);
         let word = &before[start..];
         let mut found = match place_of(&before[..start]) {
@@ -66,38 +72,73 @@ impl Session {
             };
             let own = matches!(binding.space, Space::Value | Space::Function);
             if own && binding.name.starts_with(word) {
-                found.push(Completion { name: binding.name.to_string(), kind: "yours", about });
+                found.push(Completion {
+                    name: binding.name.to_string(),
+                    kind: "yours",
+                    about,
+                });
             }
         }
         for entry in entries() {
-            let kind = if entry.is_function() { "function" } else { "constant" };
+            let kind = if entry.is_function() {
+                "function"
+            } else {
+                "constant"
+            };
             for name in entry.spellings().filter(|name| name.starts_with(word)) {
                 let about = format!("{}  {}", library::signature(entry), entry.about);
-                found.push(Completion { name: name.to_owned(), kind, about });
+                found.push(Completion {
+                    name: name.to_owned(),
+                    kind,
+                    about,
+                });
             }
         }
-        for item in prelude::written().iter().filter(|item| item.name.starts_with(word)) {
-            found.push(Completion { name: item.name.to_owned(), kind: "function", about: item.about.to_owned() });
+        for item in prelude::written()
+            .iter()
+            .filter(|item| item.name.starts_with(word))
+        {
+            found.push(Completion {
+                name: item.name.to_owned(),
+                kind: "function",
+                about: item.about.to_owned(),
+            });
         }
         let words = STATEMENTS.iter().filter(|_| at_start).chain(KEYWORDS.iter());
         for (name, about) in words.filter(|(name, _)| !word.is_empty() && name.starts_with(word)) {
-            found.push(Completion { name: (*name).to_owned(), kind: "word", about: (*about).to_owned() });
+            found.push(Completion {
+                name: (*name).to_owned(),
+                kind: "word",
+                about: (*about).to_owned(),
+            });
         }
         found
     }
 
     fn units(&self, word: &str) -> Vec<Completion> {
         let environment = &self.checker.environment;
-        let own = environment.units.keys().chain(environment.tallies.iter().map(|(name, _)| name));
+        let own = environment
+            .units
+            .keys()
+            .chain(environment.tallies.iter().map(|(name, _)| name));
         let mut found: Vec<Completion> = own
             .filter(|name| name.starts_with(word))
-            .map(|name| Completion { name: name.to_string(), kind: "unit", about: "yours".into() })
+            .map(|name| Completion {
+                name: name.to_string(),
+                kind: "unit",
+                about: "yours".into(),
+            })
             .collect();
         found.sort_by(|a, b| a.name.cmp(&b.name));
-        let unit = |name: String, about: String| Completion { name, kind: "unit", about };
+        let unit = |name: String, about: String| Completion {
+            name,
+            kind: "unit",
+            about,
+        };
         for one in UNITS {
             let plain = one.spellings().filter(|name| name.starts_with(word));
-            found.extend(plain.map(|name| unit(name.to_owned(), format!("{}: {}", one.name, one.definition))));
+            found
+                .extend(plain.map(|name| unit(name.to_owned(), format!("{}: {}", one.name, one.definition))));
         }
         for one in UNITS.iter().filter(|_| !word.is_empty()) {
             for prefix in PREFIXES.iter().filter(|prefix| one.prefixes.allow(prefix.power)) {
@@ -111,19 +152,34 @@ impl Session {
     }
 
     fn models(&self, word: &str) -> Vec<Completion> {
-        let own = self.checker.environment.visible().filter(|(_, binding)| binding.space == Space::Model);
+        let own = self
+            .checker
+            .environment
+            .visible()
+            .filter(|(_, binding)| binding.space == Space::Model);
         let own = own.map(|(_, binding)| (binding.name.to_string(), "yours".to_owned()));
-        let bases = BASES.iter().map(|base| (base.name.to_owned(), base.about.to_owned()));
+        let bases = BASES
+            .iter()
+            .map(|base| (base.name.to_owned(), base.about.to_owned()));
         let all = own.chain(bases).filter(|(name, _)| name.starts_with(word));
-        all.map(|(name, about)| Completion { name, kind: "model", about }).collect()
+        all.map(|(name, about)| Completion {
+            name,
+            kind: "model",
+            about,
+        })
+        .collect()
     }
 
     fn columns(&self, table: &str, word: &str) -> Vec<Completion> {
         let found = self.checker.environment.latest(Space::Value, table);
-        let Some(Meaning::Table(table)) = found.map(|id| &self.checker.environment.binding(id).meaning) else {
+        let Some(Meaning::Table(table)) = found.map(|id| &self.checker.environment.binding(id).meaning)
+        else {
             return Vec::new();
         };
-        let columns = table.columns.iter().filter(|column| column.name.starts_with(word));
+        let columns = table
+            .columns
+            .iter()
+            .filter(|column| column.name.starts_with(word));
         columns
             .map(|column| Completion {
                 name: column.name.to_string(),
@@ -166,27 +222,57 @@ impl Session {
         }
     }
 
-    fn kind_of_word(&self, text: &str, before: Option<Token>, after: Option<&Token>, in_bracket: bool) -> NameKind {
+    fn kind_of_word(
+        &self,
+        text: &str,
+        before: Option<Token>,
+        after: Option<&Token>,
+        in_bracket: bool,
+    ) -> NameKind {
         let called = after.is_some_and(|token| token.kind == TokenKind::LeftParenthesis);
         let environment = &self.checker.environment;
-        let is_unit = units::find(text).is_some() || text == "h" || environment.units.contains_key(text) || environment.tally(text).is_some();
-        let after_number = before.is_some_and(|token| matches!(token.kind, TokenKind::Number | TokenKind::Concise | TokenKind::RightBrace));
+        let is_unit = units::find(text).is_some()
+            || text == "h"
+            || environment.units.contains_key(text)
+            || environment.tally(text).is_some();
+        let after_number = before.is_some_and(|token| {
+            matches!(
+                token.kind,
+                TokenKind::Number | TokenKind::Concise | TokenKind::RightBrace
+            )
+        });
         if is_unit && (in_bracket || after_number) {
             return NameKind::Unit;
         }
-        let after_model_word = before.is_some_and(|token| matches!(token.kind, TokenKind::Assume | TokenKind::Under));
-        if after_model_word || BASES.iter().any(|base| base.name == text) || environment.latest(Space::Model, text).is_some() {
+        let after_model_word =
+            before.is_some_and(|token| matches!(token.kind, TokenKind::Assume | TokenKind::Under));
+        if after_model_word
+            || BASES.iter().any(|base| base.name == text)
+            || environment.latest(Space::Model, text).is_some()
+        {
             return NameKind::Model;
         }
         if called {
-            let known = environment.latest(Space::Function, text).is_some() || library::spellings(true).any(|name| name == text);
-            let word = crate::check::call::BINDING_FORMS.iter().any(|(name, _)| *name == text) || crate::check::call::series_function(text).is_some();
-            return if known || word { NameKind::Function } else { NameKind::Unknown };
+            let known = environment.latest(Space::Function, text).is_some()
+                || library::spellings(true).any(|name| name == text);
+            let word = crate::check::call::BINDING_FORMS
+                .iter()
+                .any(|(name, _)| *name == text)
+                || crate::check::call::series_function(text).is_some();
+            return if known || word {
+                NameKind::Function
+            } else {
+                NameKind::Unknown
+            };
         }
         if environment.latest(Space::Value, text).is_some() || library::value(text).is_some() {
             return NameKind::Value;
         }
-        if is_unit { NameKind::Unit } else { NameKind::Unknown }
+        if is_unit {
+            NameKind::Unit
+        } else {
+            NameKind::Unknown
+        }
     }
 }
 
@@ -200,7 +286,11 @@ fn dimension_of(checker: &Checker, from: u32) -> Option<String> {
             Task::Table(_) | Task::Help(_) => None,
         };
     }
-    let id = checker.environment.next().checked_sub(1).filter(|id| *id >= from)?;
+    let id = checker
+        .environment
+        .next()
+        .checked_sub(1)
+        .filter(|id| *id >= from)?;
     match &checker.environment.binding(id).meaning {
         Meaning::Value(value) => Some(checker.describe(&value.scheme.typed.form)),
         Meaning::Function(_) => Some(checker.signature_of(id)),
@@ -233,7 +323,9 @@ fn place_of(before: &str) -> Spot {
         Some(TokenKind::With) => Spot::Parameter,
         Some(TokenKind::Comma) if in_with_list(&tokens) => Spot::Parameter,
         Some(TokenKind::Dot) => match tokens.iter().rev().nth(1) {
-            Some(token) if token.kind == TokenKind::Word => Spot::Column(before[token.span.range()].to_owned()),
+            Some(token) if token.kind == TokenKind::Word => {
+                Spot::Column(before[token.span.range()].to_owned())
+            }
             Some(_) | None => Spot::Value,
         },
         Some(_) | None => Spot::Value,
@@ -252,8 +344,15 @@ fn parameters(word: &str) -> Vec<Completion> {
     let spelt = |name: &&str| name.starts_with(word);
     let mut found = Vec::new();
     for parameter in PARAMETERS {
-        for name in std::iter::once(parameter.name).chain(parameter.aliases.iter().copied()).filter(spelt) {
-            found.push(Completion { name: name.to_owned(), kind: "parameter", about: parameter.about.to_owned() });
+        for name in std::iter::once(parameter.name)
+            .chain(parameter.aliases.iter().copied())
+            .filter(spelt)
+        {
+            found.push(Completion {
+                name: name.to_owned(),
+                kind: "parameter",
+                about: parameter.about.to_owned(),
+            });
         }
     }
     found

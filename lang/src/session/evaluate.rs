@@ -12,7 +12,10 @@ use crate::diagnostic::Diagnostic;
 use crate::eval::{Evaluator, Fault, Value};
 use crate::lower::{DEFAULT_MODEL, Lowering};
 use crate::program::{NodeId, Program};
-use crate::report::{ClaimReport, Frame, Item, ModelReport, Numbers, Report, Shown, TableColumn, TableReport};
+use crate::report::{
+    ClaimReport, Frame, Item, ModelReport, Numbers, Report, Shown, TableColumn, TableReport,
+};
+use crate::source::Span;
 use rustc_hash::FxHashMap;
 use std::sync::Arc;
 use zij_stdlib::model::{Model, PARAMETERS, Setting};
@@ -20,12 +23,21 @@ use zij_stdlib::model::{Model, PARAMETERS, Setting};
 /// Computes everything that the sheet shows.
 pub(super) fn evaluate(checker: &Checker, files: &dyn Files, report: &mut Report) {
     let mut lowering = Lowering::new(checker);
-    let nodes: Vec<Vec<NodeId>> = checker.tasks.iter().map(|task| lower_task(&mut lowering, task)).collect();
+    let nodes: Vec<Vec<NodeId>> = checker
+        .tasks
+        .iter()
+        .map(|task| lower_task(&mut lowering, task))
+        .collect();
     let model = lowering.model();
     let (mut program, columns, too_large) = lowering.finish();
     if let Some((source, span)) = too_large {
-        let error = Diagnostic::error("too-large", "the calculation grows beyond all measure here", span, "too large")
-            .note("functions that call one another are written out where they are called");
+        let error = Diagnostic::error(
+            "too-large",
+            "the calculation grows beyond all measure here",
+            span,
+            "too large",
+        )
+        .note("functions that call one another are written out where they are called");
         report.diagnostics.push((usize::from(source), error));
         return;
     }
@@ -34,12 +46,19 @@ pub(super) fn evaluate(checker: &Checker, files: &dyn Files, report: &mut Report
         return;
     }
     report.evaluated = true;
-    let mut run = Run { checker, evaluator: Evaluator::new(&program), faults: Vec::new() };
+    let mut run = Run {
+        checker,
+        evaluator: Evaluator::new(&program),
+        faults: Vec::new(),
+        misfits: Vec::new(),
+    };
     for (task, nodes) in checker.tasks.iter().zip(&nodes) {
         report.items.push(run.item(task, nodes));
     }
     report.model = run.model_report(model);
     let faults = std::mem::take(&mut run.faults);
+    report.faulted |= !run.misfits.is_empty();
+    report.diagnostics.append(&mut run.misfits);
     tell_faults(checker, faults, report);
 }
 
@@ -82,18 +101,25 @@ fn fill_columns(
     let mut read: FxHashMap<BindingId, Data> = FxHashMap::default();
     for (id, place) in columns {
         let binding = checker.environment.binding(*id);
-        let Meaning::Table(table) = &binding.meaning else { continue };
+        let Meaning::Table(table) = &binding.meaning else {
+            continue;
+        };
         let path = table.path.as_str();
         let wrong = |reason: String| {
             let error = Diagnostic::error("bad-data", reason, table.read.path.span, "read here");
             (usize::from(binding.place.source), error)
         };
         if !read.contains_key(id) {
-            let data = files.read(path).and_then(|bytes| data::read(path, &bytes)).map_err(wrong)?;
+            let data = files
+                .read(path)
+                .and_then(|bytes| data::read(path, &bytes))
+                .map_err(wrong)?;
             read.insert(*id, data);
         }
         let column = &table.columns[*place];
-        let numbers = read[id].numbers(path, column.place, column.factor).map_err(wrong)?;
+        let numbers = read[id]
+            .numbers(path, column.place, column.factor)
+            .map_err(wrong)?;
         program.columns.push(Arc::new(numbers));
     }
     Ok(())
@@ -121,6 +147,8 @@ struct Run<'a> {
     checker: &'a Checker,
     evaluator: Evaluator<'a>,
     faults: Vec<Fault>,
+    /// Columns that do not fit their table.
+    misfits: Vec<(usize, Diagnostic)>,
 }
 
 impl Run<'_> {
@@ -128,7 +156,11 @@ impl Run<'_> {
         match task {
             Task::Show(show) => {
                 let shown = self.show(show, nodes[0]);
-                if show.result { Item::Result(shown) } else { Item::Printed(shown) }
+                if show.result {
+                    Item::Result(shown)
+                } else {
+                    Item::Printed(shown)
+                }
             }
             Task::Claim(task) => Item::Claim(self.claim(task, nodes)),
             Task::Table(table) => Item::Table(self.table(table, nodes)),
@@ -140,7 +172,11 @@ impl Run<'_> {
         let numbers = self.numbers(node, &show.face);
         let (unit, _) = self.checker.unit_of(&show.face.form, show.face.unit.as_ref());
         let form = self.checker.shown_form(&show.face);
-        let dimension = if show.face.truth { "a truth value".into() } else { self.checker.in_words(&form) };
+        let dimension = if show.face.truth {
+            "a truth value".into()
+        } else {
+            self.checker.in_words(&form)
+        };
         Shown {
             name: show.name.to_string(),
             value: numbers,
@@ -163,7 +199,9 @@ impl Run<'_> {
 
     /// The numbers of a node in the unit in which it is shown.
     fn numbers(&mut self, node: NodeId, face: &Face) -> Numbers {
-        let Some(value) = self.value(node) else { return Numbers::Missing };
+        let Some(value) = self.value(node) else {
+            return Numbers::Missing;
+        };
         let (_, factor) = self.checker.unit_of(&face.form, face.unit.as_ref());
         match (value, face.truth) {
             (Value::Scalar(one), true) => Numbers::Truth(one != 0.0),
@@ -181,16 +219,36 @@ impl Run<'_> {
             face: table.variable.clone(),
             about: None,
         };
+        let is_variable = |column: &ast::Expr| matches!(&column.kind, ast::ExprKind::Name(name) if *name == table.plot.variable.node);
+        let listed = table.plot.columns.iter().any(|(column, _)| is_variable(column));
+        let own = table.plot.columns.iter().map(|(column, _)| column.span);
+        let spans = std::iter::once(table.plot.over.span).chain(own);
         let heads = std::iter::once(&variable).chain(&table.columns);
-        let mut columns: Vec<TableColumn> = heads.zip(nodes).map(|(head, node)| self.column(head, *node)).collect();
-        let rows = columns.iter().map(|column| column.values.len()).max().unwrap_or(0);
-        for column in &mut columns {
-            // A column that does not depend on the variable is the same in each row.
-            if let [one] = column.values[..] {
-                column.values = vec![one; rows];
+        let mut columns: Vec<TableColumn> = heads
+            .zip(nodes)
+            .map(|(head, node)| self.column(head, *node))
+            .collect();
+        let rows = columns[0].values.len();
+        for (column, span) in columns.iter_mut().zip(spans) {
+            match column.values.len() {
+                length if length == rows => {}
+                // A column that does not depend on the variable is the same in each row.
+                1 => column.values = vec![column.values[0]; rows],
+                0 => column.values = vec![f64::NAN; rows],
+                length => {
+                    self.misfits
+                        .push((usize::from(table.place.source), misfit(span, length, rows)));
+                    column.values = vec![f64::NAN; rows];
+                }
             }
         }
-        TableReport { path: table.plot.path.as_ref().map(|path| path.node.to_string()), columns }
+        if listed {
+            columns.remove(0);
+        }
+        TableReport {
+            path: table.plot.path.as_ref().map(|path| path.node.to_string()),
+            columns,
+        }
     }
 
     fn column(&mut self, head: &crate::check::Column, node: NodeId) -> TableColumn {
@@ -207,10 +265,19 @@ impl Run<'_> {
             }
         };
         let comoving = frame(&form, &self.checker.in_words(&form)) == Frame::Comoving;
-        let shown = Shown { unit: unit.clone(), frame: if comoving { Frame::Comoving } else { Frame::Proper }, ..Shown::default() };
+        let shown = Shown {
+            unit: unit.clone(),
+            frame: if comoving { Frame::Comoving } else { Frame::Proper },
+            ..Shown::default()
+        };
         let about = head.about.as_ref().map(ToString::to_string);
         let about = about.or_else(|| crate::output::frame_word(&shown).map(ToOwned::to_owned));
-        TableColumn { name: head.name.to_string(), unit, about, values }
+        TableColumn {
+            name: head.name.to_string(),
+            unit,
+            about,
+            values,
+        }
     }
 
     fn claim(&mut self, task: &ClaimTask, nodes: &[NodeId]) -> ClaimReport {
@@ -227,7 +294,10 @@ impl Run<'_> {
             unit: if task.face.truth { String::new() } else { unit },
             tolerance: None,
         };
-        let others: Option<Vec<f64>> = nodes[1..].iter().map(|node| self.value(*node)?.scalar()).collect();
+        let others: Option<Vec<f64>> = nodes[1..]
+            .iter()
+            .map(|node| self.value(*node)?.scalar())
+            .collect();
         if let Some(others) = others {
             judge(&mut claim, &task.claim, &others, factor);
         }
@@ -245,7 +315,9 @@ impl Run<'_> {
             Assertion::Between(low, high) => low.span.to(high.span),
             Assertion::Never(span) => *span,
         };
-        self.checker.sources[usize::from(task.place.source)].slice(span).to_owned()
+        self.checker.sources[usize::from(task.place.source)]
+            .slice(span)
+            .to_owned()
     }
 
     /// The model assumed, if it can be built.
@@ -255,7 +327,9 @@ impl Run<'_> {
         if !used && assumed.is_none() {
             return None;
         }
-        let Value::Model(model) = self.evaluator.value(node).ok()? else { return None };
+        let Value::Model(model) = self.evaluator.value(node).ok()? else {
+            return None;
+        };
         let name = match assumed {
             Some(model) => {
                 let text = self.checker.sources[usize::from(model.place.source)].slice(model.place.span);
@@ -294,6 +368,12 @@ fn size_of(unit: &str) -> f64 {
     parsed.map_or(1.0, |unit| Checker::new().size_of(&unit))
 }
 
+fn misfit(span: Span, length: usize, rows: usize) -> Diagnostic {
+    let message = format!("a column of {length} values in a table of {rows} rows");
+    Diagnostic::error("unlike-lengths", message, span, "unlike length")
+        .note("a column has one value for each row")
+}
+
 /// The page of the handbook on a topic, or why there is none.
 fn help(topic: Option<&str>) -> String {
     let words: Vec<String> = topic.map(ToOwned::to_owned).into_iter().collect();
@@ -322,7 +402,9 @@ fn judge(claim: &mut ClaimReport, written_claim: &ast::Claim, others: &[f64], fa
         Numbers::Truths(many) => return claim.agrees = Some(many.iter().all(|one| *one)),
         Numbers::Missing => return,
     };
-    let Some(assertion) = &written_claim.assertion else { return };
+    let Some(assertion) = &written_claim.assertion else {
+        return;
+    };
     let all = |holds: &dyn Fn(f64) -> bool| values.iter().all(|value| holds(*value));
     let quoted: Vec<f64> = others.iter().map(|value| value / factor).collect();
     claim.quoted_value = match assertion {
@@ -333,7 +415,9 @@ fn judge(claim: &mut ClaimReport, written_claim: &ast::Claim, others: &[f64], fa
         (Assertion::Is(expr) | Assertion::About(expr), [value, ..]) => {
             let about = matches!(assertion, Assertion::About(_));
             let tolerance = written_claim.within.as_ref().zip(others.get(1));
-            let Some(allowance) = allowance(expr, about, tolerance, *value, factor) else { return };
+            let Some(allowance) = allowance(expr, about, tolerance, *value, factor) else {
+                return;
+            };
             claim.tolerance = Some(allowance.width());
             all(&|computed| allowance.admits(*value, computed))
         }
@@ -349,10 +433,18 @@ fn judge(claim: &mut ClaimReport, written_claim: &ast::Claim, others: &[f64], fa
 }
 
 /// How far off the computed value may be, in the unit of the quoted one.
-fn allowance(quoted: &Expr, about: bool, within: Option<(&Tolerance, &f64)>, value: f64, factor: f64) -> Option<Allowance> {
+fn allowance(
+    quoted: &Expr,
+    about: bool,
+    within: Option<(&Tolerance, &f64)>,
+    value: f64,
+    factor: f64,
+) -> Option<Allowance> {
     let number = written(quoted);
     match within {
-        Some((Tolerance::Amount(amount), size)) if is_relative(amount) => Some(Allowance::even(size * value.abs())),
+        Some((Tolerance::Amount(amount), size)) if is_relative(amount) => {
+            Some(Allowance::even(size * value.abs()))
+        }
         Some((Tolerance::Amount(_), size)) => Some(Allowance::even(size / factor)),
         Some((Tolerance::Sigma(_), count)) => {
             let number = number?;
@@ -363,4 +455,3 @@ fn allowance(quoted: &Expr, about: bool, within: Option<(&Tolerance, &f64)>, val
         None => Some(claim::as_written(&number?)),
     }
 }
-

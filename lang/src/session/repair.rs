@@ -12,7 +12,12 @@ const MAX_BYTES_TRIED: usize = 2 << 20;
 /// Repairs tried for one report at most.
 const MAX_TRIED: usize = 100;
 
-pub(super) fn prove(diagnostics: &mut [(usize, Diagnostic)], before: &Checker, source: &Source, reach: &Reach<'_>) {
+pub(super) fn prove(
+    diagnostics: &mut [(usize, Diagnostic)],
+    before: &Checker,
+    source: &Source,
+    reach: &Reach<'_>,
+) {
     let own = before.sources.len();
     let all = counts(diagnostics);
     let mut budget = MAX_BYTES_TRIED;
@@ -40,8 +45,16 @@ fn counts(diagnostics: &[(usize, Diagnostic)]) -> (usize, usize) {
     (errors, diagnostics.len() - errors)
 }
 
-fn helps(fix: &Fix, (errors, warnings): (usize, usize), before: &Checker, source: &Source, reach: &Reach<'_>) -> bool {
-    let Some(text) = mended(&source.text, fix) else { return false };
+fn helps(
+    fix: &Fix,
+    (errors, warnings): (usize, usize),
+    before: &Checker,
+    source: &Source,
+    reach: &Reach<'_>,
+) -> bool {
+    let Some(text) = mended(&source.text, fix) else {
+        return false;
+    };
     let mut trial = before.clone();
     trial.tasks.clear();
     trial.diagnostics.clear();

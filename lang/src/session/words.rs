@@ -23,14 +23,25 @@ impl<'a> Units<'a> {
 
 impl Words for Units<'_> {
     fn value(&self, place: eval::Place, value: f64) -> String {
-        let place = Place { source: place.source, span: place.span };
-        let Some(typed) = self.known.get(&place) else { return plain_number(value) };
+        let place = Place {
+            source: place.source,
+            span: place.span,
+        };
+        let Some(typed) = self.known.get(&place) else {
+            return plain_number(value);
+        };
         let (unit, factor) = self.checker.unit_of(&typed.form, typed.unit.as_ref());
         let shown = plain_number(value / factor);
-        if unit.is_empty() { shown } else { format!("{shown} {unit}") }
+        if unit.is_empty() {
+            shown
+        } else {
+            format!("{shown} {unit}")
+        }
     }
 
     fn text(&self, place: eval::Place) -> String {
-        self.checker.sources[usize::from(place.source)].slice(place.span).to_owned()
+        self.checker.sources[usize::from(place.source)]
+            .slice(place.span)
+            .to_owned()
     }
 }

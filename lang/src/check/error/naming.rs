@@ -1,7 +1,7 @@
 //! Names that are not there: near ones, other kinds, later definitions.
 
 use crate::ast::{Name, StatementKind};
-use crate::check::model::base;
+use crate::check::model::{base, parameter};
 use crate::check::{Checker, call, library};
 use crate::diagnostic::Diagnostic;
 use crate::source::Span;
@@ -25,7 +25,11 @@ pub fn near<'a>(name: &str, known: impl IntoIterator<Item = &'a str>) -> Vec<&'a
         _ => 3,
     };
     let distance = |other: &str| {
-        if plain(other) == plain(name) { 0 } else { strsim::osa_distance(name, other) }
+        if plain(other) == plain(name) {
+            0
+        } else {
+            strsim::osa_distance(name, other)
+        }
     };
     let mut found: Vec<(usize, &str)> = known
         .into_iter()
@@ -52,7 +56,10 @@ pub(in crate::check) fn unknown_unit(name: &Name, near: &[String], counting: boo
     let message = format!("there is no unit {}", name.node);
     let error = Diagnostic::error("unknown-unit", message, name.span, "no such unit");
     if counting {
-        return error.note(format!("a thing that is counted is declared: tally {}", name.node));
+        return error.note(format!(
+            "a thing that is counted is declared: tally {}",
+            name.node
+        ));
     }
     with_near(error, name.span, near)
 }
@@ -60,21 +67,43 @@ pub(in crate::check) fn unknown_unit(name: &Name, near: &[String], counting: boo
 pub(in crate::check) fn value_as_unit(name: &Name, after_slash: bool) -> Diagnostic {
     let message = format!("{} is a value, and a unit is wanted here", name.node);
     let error = Diagnostic::error("value-as-unit", message, name.span, "a value, no unit");
-    let before = Span { start: name.span.start, end: name.span.start };
+    let before = Span {
+        start: name.span.start,
+        end: name.span.start,
+    };
     if after_slash {
-        let slash = Span { start: name.span.start.saturating_sub(1), end: name.span.start };
+        let slash = Span {
+            start: name.span.start.saturating_sub(1),
+            end: name.span.start,
+        };
         return error.fix("divide by the value", slash, " / ");
     }
     error.fix("multiply by the value", before, "* ")
 }
 
 pub(in crate::check) fn ambiguous_slash(name: &Name) -> Diagnostic {
-    let message = format!("/{} could divide by the unit or by the value {}", name.node, name.node);
-    let slash = Span { start: name.span.start.saturating_sub(1), end: name.span.start };
+    let message = format!(
+        "/{} could divide by the unit or by the value {}",
+        name.node, name.node
+    );
+    let slash = Span {
+        start: name.span.start.saturating_sub(1),
+        end: name.span.start,
+    };
     Diagnostic::error("ambiguous-slash", message, name.span, "unit or value?")
-        .note(format!("both are in sight and they differ: as a unit write {}^-1, as a value leave spaces around /", name.node))
+        .note(format!(
+            "both are in sight and they differ: as a unit write {}^-1, as a value leave spaces around /",
+            name.node
+        ))
         .fix("divide by the value", slash, " / ")
-        .fix("divide by the unit", Span { start: slash.start, end: name.span.end }, format!(" {}^-1", name.node))
+        .fix(
+            "divide by the unit",
+            Span {
+                start: slash.start,
+                end: name.span.end,
+            },
+            format!(" {}^-1", name.node),
+        )
 }
 
 pub(in crate::check) fn unknown_column(field: &Name, table: &str, columns: &[&str]) -> Diagnostic {
@@ -85,11 +114,18 @@ pub(in crate::check) fn unknown_column(field: &Name, table: &str, columns: &[&st
     with_near(error, field.span, &near)
 }
 
-pub(in crate::check) fn unknown_argument(name: &Name, word: &Name, parameters: &[(SmolStr, bool)]) -> Diagnostic {
+pub(in crate::check) fn unknown_argument(
+    name: &Name,
+    word: &Name,
+    parameters: &[(SmolStr, bool)],
+) -> Diagnostic {
     let known: Vec<&str> = parameters.iter().map(|(name, _)| name.as_str()).collect();
     let message = format!("{} has no argument {}", name.node, word.node);
-    let error = Diagnostic::error("unknown-argument", message, word.span, "no such argument")
-        .note(format!("it is called as {}({})", name.node, known.join(", ")));
+    let error = Diagnostic::error("unknown-argument", message, word.span, "no such argument").note(format!(
+        "it is called as {}({})",
+        name.node,
+        known.join(", ")
+    ));
     with_near(error, word.span, &near(&word.node, known))
 }
 
@@ -97,14 +133,27 @@ pub(in crate::check) fn unknown_model(name: &Name, known: &[&str]) -> Diagnostic
     let message = format!("there is no model {}", name.node);
     let error = Diagnostic::error("unknown-model", message, name.span, "no such model");
     let near = near(&name.node, known.iter().copied());
-    let error = if near.is_empty() { error.note("`help models` lists them") } else { error };
+    let error = if near.is_empty() {
+        error.note("`help models` lists them")
+    } else {
+        error
+    };
     with_near(error, name.span, &near)
 }
 
 pub(in crate::check) fn wrong_parameter(name: &Name) -> Diagnostic {
     let message = format!("a model has no parameter {}", name.node);
-    let known = PARAMETERS.iter().flat_map(|one| std::iter::once(one.name).chain(one.aliases.iter().copied()));
-    let near = near(&name.node, known);
+    let known = PARAMETERS
+        .iter()
+        .flat_map(|one| std::iter::once(one.name).chain(one.aliases.iter().copied()));
+    let mut near = near(&name.node, known);
+    let mut met = Vec::new();
+    near.retain(|spelling| {
+        let id = parameter(spelling).map(|(id, _)| id);
+        let new = !met.contains(&id);
+        met.push(id);
+        new
+    });
     let error = Diagnostic::error("wrong-parameter", message, name.span, "no such parameter");
     let error = if near.is_empty() {
         let names: Vec<&str> = PARAMETERS.iter().map(|parameter| parameter.name).collect();
@@ -127,7 +176,12 @@ impl Checker {
     pub(in crate::check) fn unknown_name(&mut self, name: &SmolStr, span: Span) -> Diagnostic {
         let [values, functions] = self.spaces();
         let own_function = self.environment.latest(functions, name).is_some();
-        if own_function || library::function(name).is_some() || self.library_binding(super::super::Space::LibraryFunction, name).is_some() {
+        if own_function
+            || library::function(name).is_some()
+            || self
+                .library_binding(super::super::Space::LibraryFunction, name)
+                .is_some()
+        {
             let message = format!("{name} is a function, and here it stands without its arguments");
             return Diagnostic::error("unknown-name", message, span, "a function")
                 .note(format!("write {name}(…); `help {name}` says of what"));
@@ -135,25 +189,42 @@ impl Checker {
         if let Some(later) = self.bound_later(name, false) {
             return used_before(name, span, later);
         }
-        if base(name).is_some() || self.environment.latest(super::super::Space::Model, name).is_some() {
+        if base(name).is_some()
+            || self
+                .environment
+                .latest(super::super::Space::Model, name)
+                .is_some()
+        {
             let message = format!("{name} is a model, and here it stands as a value");
-            return Diagnostic::error("model-as-value", message, span, "a model")
-                .note(format!("a value is computed `under {name}`; `assume {name}` takes it for the sheet"));
+            return Diagnostic::error("model-as-value", message, span, "a model").note(format!(
+                "a value is computed `under {name}`; `assume {name}` takes it for the sheet"
+            ));
         }
         let known = self.environment.units.contains_key(name) || self.environment.tally(name).is_some();
         if known || (units::find(name).is_some() && name.chars().count() > 1) {
             let message = format!("{name} is a unit, and here it stands as a value");
-            let before = Span { start: span.start, end: span.start };
+            let before = Span {
+                start: span.start,
+                end: span.start,
+            };
             return Diagnostic::error("unit-as-value", message, span, "a unit, no value")
                 .note("a unit follows a number or stands in [ ]")
                 .fix("put a number before it", before, "1 ");
         }
-        let visible = self.environment.visible().filter(|(_, binding)| binding.space == values);
+        let visible = self
+            .environment
+            .visible()
+            .filter(|(_, binding)| binding.space == values);
         let mut known: Vec<String> = visible.map(|(_, binding)| binding.name.to_string()).collect();
         known.extend(self.locals.iter().map(|local| local.name.to_string()));
         known.extend(library::spellings(false).map(ToOwned::to_owned));
         let near = near(name, known.iter().map(String::as_str));
-        let error = Diagnostic::error("unknown-name", format!("there is no value {name}"), span, "no such value");
+        let error = Diagnostic::error(
+            "unknown-name",
+            format!("there is no value {name}"),
+            span,
+            "no such value",
+        );
         with_near(error, span, &near)
     }
 
@@ -165,7 +236,10 @@ impl Checker {
             || library::value(&name.node).is_some();
         if is_value {
             let message = format!("{} is a value, not a function", name.node);
-            let after = Span { start: name.span.end, end: name.span.end };
+            let after = Span {
+                start: name.span.end,
+                end: name.span.end,
+            };
             return Diagnostic::error("unknown-function", message, name.span, "a value")
                 .note("a product is written with *")
                 .fix("multiply", after, " * ");
@@ -173,14 +247,21 @@ impl Checker {
         if let Some(later) = self.bound_later(&name.node, true) {
             return used_before(&name.node, span, later);
         }
-        let visible = self.environment.visible().filter(|(_, binding)| binding.space == functions);
+        let visible = self
+            .environment
+            .visible()
+            .filter(|(_, binding)| binding.space == functions);
         let mut known: Vec<String> = visible.map(|(_, binding)| binding.name.to_string()).collect();
         known.extend(library::spellings(true).map(ToOwned::to_owned));
         known.extend(call::BINDING_FORMS.iter().map(|(word, _)| (*word).to_owned()));
         known.extend(call::SERIES_FUNCTIONS.iter().map(|(word, _)| (*word).to_owned()));
         let near = near(&name.node, known.iter().map(String::as_str));
         let message = format!("there is no function {}", name.node);
-        with_near(Diagnostic::error("unknown-function", message, name.span, "no such function"), name.span, &near)
+        with_near(
+            Diagnostic::error("unknown-function", message, name.span, "no such function"),
+            name.span,
+            &near,
+        )
     }
 
     /// Where the sheet binds a name that is not bound yet. The sheet is read
@@ -189,7 +270,11 @@ impl Checker {
         if self.in_library {
             return None;
         }
-        if self.later.as_ref().is_none_or(|(source, _)| *source != self.source) {
+        if self
+            .later
+            .as_ref()
+            .is_none_or(|(source, _)| *source != self.source)
+        {
             let text = &self.sources[usize::from(self.source)].text;
             self.later = Some((self.source, names_bound(text)));
         }
@@ -199,12 +284,19 @@ impl Checker {
 }
 
 fn names_bound(text: &str) -> FxHashMap<(bool, SmolStr), Span> {
-    let names = crate::parser::parse(text).statements.into_iter().filter_map(|statement| match statement.kind {
-        StatementKind::Given(it) | StatementKind::Value(it) | StatementKind::Result(it) => Some((false, it.name)),
-        StatementKind::Function(it, _) => Some((true, it.name)),
-        _ => None,
-    });
-    names.map(|(function, name)| ((function, name.node), name.span)).collect()
+    let names = crate::parser::parse(text)
+        .statements
+        .into_iter()
+        .filter_map(|statement| match statement.kind {
+            StatementKind::Given(it) | StatementKind::Value(it) | StatementKind::Result(it) => {
+                Some((false, it.name))
+            }
+            StatementKind::Function(it, _) => Some((true, it.name)),
+            _ => None,
+        });
+    names
+        .map(|(function, name)| ((function, name.node), name.span))
+        .collect()
 }
 
 fn used_before(name: &str, span: Span, later: Span) -> Diagnostic {
@@ -214,6 +306,11 @@ fn used_before(name: &str, span: Span, later: Span) -> Diagnostic {
     } else {
         format!("{name} is used before it is bound")
     };
-    let error = Diagnostic::error("used-before-definition", message, span, "not bound yet").and(later, "bound here");
-    error.note(if itself { "definitions do not refer to themselves" } else { "a name is used below its definition" })
+    let error =
+        Diagnostic::error("used-before-definition", message, span, "not bound yet").and(later, "bound here");
+    error.note(if itself {
+        "definitions do not refer to themselves"
+    } else {
+        "a name is used below its definition"
+    })
 }

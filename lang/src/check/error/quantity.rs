@@ -29,6 +29,19 @@ enum Difference {
     Dimension,
 }
 
+impl Difference {
+    /// The code of a message about it; `otherwise` where dimensions differ.
+    fn code(self, otherwise: &'static str) -> &'static str {
+        match self {
+            Difference::Frame => "mixed-frames",
+            Difference::LittleH => "mixed-h",
+            Difference::Angle => "angle-for-number",
+            Difference::Magnitude => "magnitude-for-number",
+            Difference::Dimension => otherwise,
+        }
+    }
+}
+
 /// Repairs offered for one mistake at most.
 const MOST_REPAIRS: usize = 3;
 
@@ -56,8 +69,11 @@ impl Checker {
             .filter(|key| *key >= form::FIRST_UNKNOWN)
             .filter_map(|key| self.unifier.sort(key).along())
             .collect();
-        let wrong: Vec<Key> =
-            quotient.parts().map(|(key, _)| key).filter(|key| *key < FIRST_BOUND && !open.contains(key)).collect();
+        let wrong: Vec<Key> = quotient
+            .parts()
+            .map(|(key, _)| key)
+            .filter(|key| *key < FIRST_BOUND && !open.contains(key))
+            .collect();
         let all = |allowed: &[Key]| wrong.iter().all(|key| allowed.contains(key));
         if all(&[COMOVING]) {
             Difference::Frame
@@ -73,20 +89,27 @@ impl Checker {
     }
 
     fn words_of(&self, difference: Difference, form: &Form) -> String {
-        if difference == Difference::Frame { self.describe_frame(form) } else { self.describe(form) }
+        if difference == Difference::Frame {
+            self.describe_frame(form)
+        } else {
+            self.describe(form)
+        }
     }
 
     /// An error about two sides, with its notes and repairs.
-    fn unlike(&mut self, message: &dyn Fn(&str, &str) -> String, at: Span, left: Side<'_>, right: Side<'_>) -> Diagnostic {
+    fn unlike(
+        &mut self,
+        message: &dyn Fn(&str, &str) -> String,
+        at: Span,
+        left: Side<'_>,
+        right: Side<'_>,
+    ) -> Diagnostic {
         let difference = self.difference(&left.1.form, &right.1.form);
-        let words = [self.words_of(difference, &left.1.form), self.words_of(difference, &right.1.form)];
-        let code = match difference {
-            Difference::Frame => "mixed-frames",
-            Difference::LittleH => "mixed-h",
-            Difference::Angle => "angle-for-number",
-            Difference::Magnitude => "magnitude-for-number",
-            Difference::Dimension => "unlike-sides",
-        };
+        let words = [
+            self.words_of(difference, &left.1.form),
+            self.words_of(difference, &right.1.form),
+        ];
+        let code = difference.code("unlike-sides");
         let mut error = Diagnostic::error(code, message(&words[0], &words[1]), at, "");
         if at == right.0.span {
             error.at.text.clone_from(&words[1]);
@@ -99,20 +122,32 @@ impl Checker {
         self.settle_sides(error, difference, left, right)
     }
 
-    fn settle_sides(&mut self, mut error: Diagnostic, difference: Difference, left: Side<'_>, right: Side<'_>) -> Diagnostic {
+    fn settle_sides(
+        &mut self,
+        mut error: Diagnostic,
+        difference: Difference,
+        left: Side<'_>,
+        right: Side<'_>,
+    ) -> Diagnostic {
         match difference {
             Difference::Frame => {
                 let z = self.redshift_near(&[left.0, right.0]);
                 error = error.note(frame_note(z.as_deref()));
-                for (side, other) in [(left, right), (right, left)] {
-                    error = self.frame_repair(error, side, &other.1.form, z.as_deref());
+                let is_comoving = !form::is_zero(self.settled(&left.1.form).exponent(COMOVING));
+                let order = if is_comoving {
+                    [(left, right), (right, left)]
+                } else {
+                    [(right, left), (left, right)]
+                };
+                for (side, other) in order {
+                    error = self.frame_repair(error, side, &other.1.form, z.as_deref(), Wrap::Operand);
                 }
                 error
             }
             Difference::LittleH => {
                 error = error.note("they differ by a power of h: at h = 0.7, by 30% for each");
                 for (side, other) in [(left, right), (right, left)] {
-                    error = self.h_repair(error, side, &other.1.form);
+                    error = self.h_repair(error, side, &other.1.form, Wrap::Operand);
                 }
                 error
             }
@@ -121,7 +156,8 @@ impl Checker {
                 self.unit_repair(error, left, right, ANGLE, &["deg", "rad", "arcsec"])
             }
             Difference::Magnitude => {
-                error = error.note("a computed number is no magnitude: 2.5*log10(x) is, with its 2.5 written");
+                error =
+                    error.note("a computed number is no magnitude: 2.5*log10(x) is, with its 2.5 written");
                 for (expr, _) in [left, right] {
                     error = log_repair(error, expr);
                 }
@@ -132,36 +168,91 @@ impl Checker {
     }
 
     /// `a + b` of unlike sides.
-    pub(in crate::check) fn unlike_sides(&mut self, op: Spanned<BinaryOp>, left: Side<'_>, right: Side<'_>) -> Diagnostic {
+    pub(in crate::check) fn unlike_sides(
+        &mut self,
+        op: Spanned<BinaryOp>,
+        left: Side<'_>,
+        right: Side<'_>,
+    ) -> Diagnostic {
         let sum = op.node == BinaryOp::Add;
         let message = move |a: &str, b: &str| {
-            if sum { format!("cannot add {a} and {b}") } else { format!("cannot subtract {b} from {a}") }
+            if sum {
+                format!("cannot add {a} and {b}")
+            } else {
+                format!("cannot subtract {b} from {a}")
+            }
         };
-        self.unlike(&message, op.span, left, right)
+        let mut error = self.unlike(&message, op.span, left, right);
+        error.at.text = "unlike sides".into();
+        error
     }
 
-    pub(in crate::check) fn unlike_comparison(&mut self, op: Span, left: Side<'_>, right: Side<'_>) -> Diagnostic {
-        self.unlike(&|a, b| format!("cannot compare {a} with {b}"), op, left, right)
+    pub(in crate::check) fn unlike_comparison(
+        &mut self,
+        op: Span,
+        left: Side<'_>,
+        right: Side<'_>,
+    ) -> Diagnostic {
+        let mut error = self.unlike(&|a, b| format!("cannot compare {a} with {b}"), op, left, right);
+        error.at.text = "unlike sides".into();
+        error
     }
 
-    pub(in crate::check) fn unlike_parts(&mut self, left: Side<'_>, right: Side<'_>, what: &str) -> Diagnostic {
-        self.unlike(&|a, b| format!("{what} must be alike, and these are {a} and {b}"), right.0.span, left, right)
+    pub(in crate::check) fn unlike_parts(
+        &mut self,
+        left: Side<'_>,
+        right: Side<'_>,
+        what: &str,
+    ) -> Diagnostic {
+        self.unlike(
+            &|a, b| format!("{what} must be alike, and these are {a} and {b}"),
+            right.0.span,
+            left,
+            right,
+        )
     }
 
     pub(in crate::check) fn unlike_claim(&mut self, subject: Side<'_>, quoted: Side<'_>) -> Diagnostic {
-        self.unlike(&|a, b| format!("what is computed is {a}, and what is quoted {b}"), quoted.0.span, subject, quoted)
+        self.unlike(
+            &|a, b| format!("what is computed is {a}, and what is quoted {b}"),
+            quoted.0.span,
+            subject,
+            quoted,
+        )
     }
 
-    pub(in crate::check) fn unlike_annotation(&mut self, (value, typed): (Span, &Typed), bracket: &Bracket, asked: &Form) -> Diagnostic {
+    /// A default that is not what its parameter is announced as.
+    pub(in crate::check) fn unlike_default(
+        &self,
+        (value, typed): (Span, &Typed),
+        (name, takes): (Span, &Typed),
+    ) -> Diagnostic {
+        let difference = self.difference(&typed.form, &takes.form);
+        let words = [
+            self.words_of(difference, &takes.form),
+            self.words_of(difference, &typed.form),
+        ];
+        let message = format!("the parameter is {}, and its default {}", words[0], words[1]);
+        Diagnostic::error(difference.code("unlike-sides"), message, value, &words[1]).and(name, &words[0])
+    }
+
+    pub(in crate::check) fn unlike_annotation(
+        &mut self,
+        (value, typed): (Span, &Typed),
+        bracket: &Bracket,
+        asked: &Form,
+    ) -> Diagnostic {
         let difference = self.difference(&typed.form, asked);
-        let words = [self.words_of(difference, asked), self.words_of(difference, &typed.form)];
-        let message = format!("the bracket announces {}, and the value is {}", words[0], words[1]);
-        let error = Diagnostic::error("unlike-sides", message, value, &words[1]).and(bracket.span, &words[0]);
-        match difference {
-            Difference::Frame => Diagnostic { code: "mixed-frames", ..error },
-            Difference::LittleH => Diagnostic { code: "mixed-h", ..error },
-            Difference::Angle | Difference::Magnitude | Difference::Dimension => error,
-        }
+        let words = [
+            self.words_of(difference, asked),
+            self.words_of(difference, &typed.form),
+        ];
+        let message = format!(
+            "the bracket announces {}, and the value is {}",
+            words[0], words[1]
+        );
+        Diagnostic::error(difference.code("unlike-sides"), message, value, &words[1])
+            .and(bracket.span, &words[0])
     }
 
     /// An argument that is not what the function takes.
@@ -172,29 +263,42 @@ impl Checker {
         place: usize,
         (value, actual): Side<'_>,
         expected: &Form,
-        placed: &[Option<&Expr>],
     ) -> Diagnostic {
         let difference = self.difference(&actual.form, expected);
-        let words = [self.words_of(difference, expected), self.words_of(difference, &actual.form)];
-        let message = format!("{} takes {} for {}, and this is {}", name.node, words[0], parameters[place].0, words[1]);
-        let code = match difference {
-            Difference::Frame => "mixed-frames",
-            Difference::LittleH => "mixed-h",
-            Difference::Angle => "angle-for-number",
-            Difference::Magnitude => "magnitude-for-number",
-            Difference::Dimension => "wrong-argument",
-        };
-        let error = Diagnostic::error(code, message, value.span, &words[1]).note(format!("it is {signature}"));
+        let words = [
+            self.words_of(difference, expected),
+            self.words_of(difference, &actual.form),
+        ];
+        let message = format!(
+            "{} takes {} for {}, and this is {}",
+            name.node, words[0], parameters[place].0, words[1]
+        );
+        let code = difference.code("wrong-argument");
+        let error =
+            Diagnostic::error(code, message, value.span, &words[1]).note(format!("it is {signature}"));
         let wanted = Typed::quantity(expected.clone());
-        let error = self.swap_repair(error, placed, place);
         match difference {
             Difference::Frame => {
                 let z = self.redshift_near(&[value]);
-                self.frame_repair(error.note(frame_note(z.as_deref())), (value, actual), expected, z.as_deref())
+                self.frame_repair(
+                    error.note(frame_note(z.as_deref())),
+                    (value, actual),
+                    expected,
+                    z.as_deref(),
+                    Wrap::Argument,
+                )
             }
-            Difference::LittleH => self.h_repair(error, (value, actual), expected),
-            Difference::Angle => self.unit_repair(error, (value, actual), (value, &wanted), ANGLE, &["deg", "rad", "arcsec"]),
-            Difference::Magnitude => self.unit_repair(error, (value, actual), (value, &wanted), MAGNITUDE, &["mag"]),
+            Difference::LittleH => self.h_repair(error, (value, actual), expected, Wrap::Argument),
+            Difference::Angle => self.unit_repair(
+                error,
+                (value, actual),
+                (value, &wanted),
+                ANGLE,
+                &["deg", "rad", "arcsec"],
+            ),
+            Difference::Magnitude => {
+                self.unit_repair(error, (value, actual), (value, &wanted), MAGNITUDE, &["mag"])
+            }
             Difference::Dimension => self.constant_of_side(error, (value, actual), expected),
         }
     }
@@ -202,19 +306,22 @@ impl Checker {
     /// A bracket whose unit is not of the value's kind.
     pub(in crate::check) fn wrong_bracket(&mut self, it: &Bracketed<'_>, target: &Form) -> Diagnostic {
         let difference = self.difference(&it.typed.form, target);
-        let words = [self.words_of(difference, &it.typed.form), self.words_of(difference, target)];
-        let code = match difference {
-            Difference::Frame => "mixed-frames",
-            Difference::LittleH => "mixed-h",
-            Difference::Angle => "angle-for-number",
-            Difference::Magnitude => "magnitude-for-number",
-            Difference::Dimension => "wrong-bracket",
-        };
+        let words = [
+            self.words_of(difference, &it.typed.form),
+            self.words_of(difference, target),
+        ];
+        let code = difference.code("wrong-bracket");
         let unit = it.measure.text.as_str();
-        let message = format!("{} cannot be expressed in {unit}, for that is {}", words[0], words[1]);
+        let message = format!(
+            "{} cannot be expressed in {unit}, for that is {}",
+            words[0], words[1]
+        );
         let mut error =
             Diagnostic::error(code, message, it.bracket.span, &words[1]).and(it.value.span, &words[0]);
-        let inside = Span { start: it.bracket.unit.span.end, end: it.bracket.unit.span.end };
+        let inside = Span {
+            start: it.bracket.unit.span.end,
+            end: it.bracket.unit.span.end,
+        };
         match difference {
             Difference::Frame => {
                 let z = self.redshift_near(&[it.value]);
@@ -233,9 +340,25 @@ impl Checker {
     }
 
     /// A bridge that would lead across.
-    fn via_repair(&mut self, mut error: Diagnostic, it: &Bracketed<'_>, target: &Form, inside: Span) -> Diagnostic {
+    fn via_repair(
+        &mut self,
+        mut error: Diagnostic,
+        it: &Bracketed<'_>,
+        target: &Form,
+        inside: Span,
+    ) -> Diagnostic {
         let (value, target) = (self.settled(&it.typed.form), self.settled(target));
-        for names in [&["c"][..], &["k_B"], &["h_P"], &["h_P", "c"], &["G", "c"], &["c", "hbar"], &["H0"], &["c", "H0"], &["m_p"]] {
+        for names in [
+            &["c"][..],
+            &["k_B"],
+            &["h_P"],
+            &["h_P", "c"],
+            &["G", "c"],
+            &["c", "hbar"],
+            &["H0"],
+            &["c", "H0"],
+            &["m_p"],
+        ] {
             if error.fixes.len() < MOST_REPAIRS && self.bridge_with(&value, &target, names) {
                 let names = names.join(", ");
                 error = error.fix(format!("cross with {names}"), inside, format!(" via {names}"));
@@ -245,48 +368,53 @@ impl Checker {
     }
 
     /// Takes one side along to the frame of the other.
-    fn frame_repair(&self, error: Diagnostic, (expr, typed): Side<'_>, other: &Form, z: Option<&str>) -> Diagnostic {
+    fn frame_repair(
+        &self,
+        error: Diagnostic,
+        (expr, typed): Side<'_>,
+        other: &Form,
+        z: Option<&str>,
+        wrap: Wrap,
+    ) -> Diagnostic {
         let own = self.settled(&typed.form);
         let target = self.settled(other).exponent(COMOVING);
-        if own.exponent(COMOVING) == target || form::is_zero(own.exponent(COMOVING)) {
+        if own.exponent(COMOVING) == target {
             return error;
         }
-        let unit = self.unit_without_frame(typed);
+        let unit = if form::is_zero(target) {
+            self.unit_without_frame(typed)
+        } else {
+            let there = own
+                .without(|key| key == COMOVING)
+                .times(&Form::power_of(COMOVING, target));
+            self.unit_text(&there)
+        };
         match z {
-            Some(z) => self.bracketed(error, expr, &unit, &format!("at {z}"), &format!("take it along to z = {z}")),
-            None => self.bracketed(error, expr, &unit, "today", "take it as of today"),
+            Some(z) => bracketed(
+                error,
+                expr,
+                &unit,
+                &format!("at {z}"),
+                &format!("take it along to z = {z}"),
+                wrap,
+            ),
+            None => bracketed(error, expr, &unit, "today", "take it as of today", wrap),
         }
     }
 
-    fn h_repair(&self, error: Diagnostic, (expr, typed): Side<'_>, other: &Form) -> Diagnostic {
+    fn h_repair(&self, error: Diagnostic, (expr, typed): Side<'_>, other: &Form, wrap: Wrap) -> Diagnostic {
         let (own, other) = (self.settled(&typed.form), self.settled(other));
         if form::is_zero(own.exponent(LITTLE_H)) || !form::is_zero(other.exponent(LITTLE_H)) {
             return error;
         }
         let plain = own.without(|key| key == LITTLE_H);
-        let unit = typed.unit.as_ref().map(|unit| without_h(&unit.text)).filter(|text| !text.is_empty());
+        let unit = typed
+            .unit
+            .as_ref()
+            .map(|unit| without_h(&unit.text))
+            .filter(|text| !text.is_empty());
         let unit = unit.unwrap_or_else(|| self.unit_text(&plain));
-        self.bracketed(error, expr, &unit, "for h", "settle h with the model")
-    }
-
-    /// Adds or completes a bracket: `(x [Mpc at z])`.
-    fn bracketed(&self, error: Diagnostic, expr: &Expr, unit: &str, what: &str, title: &str) -> Diagnostic {
-        if unit.is_empty() {
-            return error;
-        }
-        let (start, end) = (Span { end: expr.span.start, ..expr.span }, Span { start: expr.span.end, ..expr.span });
-        let inner = ungrouped(expr);
-        if let ExprKind::Express(_, bracket) = &inner.kind {
-            let inside = Span { start: bracket.unit.span.end, end: bracket.unit.span.end };
-            return error.fix(title, inside, format!(" {what}"));
-        }
-        let title = format!("{title}: [{unit} {what}]");
-        let edits = if matches!(expr.kind, ExprKind::Group(_)) || !is_sum(expr) {
-            vec![(start, "(".to_owned()), (end, format!(" [{unit} {what}])"))]
-        } else {
-            vec![(start, "((".to_owned()), (end, format!(") [{unit} {what}])"))]
-        };
-        with_edits(error, title, edits)
+        bracketed(error, expr, &unit, "for h", "settle h with the model", wrap)
     }
 
     fn unit_without_frame(&self, typed: &Typed) -> String {
@@ -300,11 +428,21 @@ impl Checker {
     }
 
     /// Gives a bare number its unit.
-    fn unit_repair(&self, mut error: Diagnostic, left: Side<'_>, right: Side<'_>, generator: Key, units: &[&str]) -> Diagnostic {
+    fn unit_repair(
+        &self,
+        mut error: Diagnostic,
+        left: Side<'_>,
+        right: Side<'_>,
+        generator: Key,
+        units: &[&str],
+    ) -> Diagnostic {
         for (expr, typed) in [left, right] {
             let bare = self.settled(&typed.form).exponent(generator) == form::ZERO;
             if bare && is_bare_literal(expr) {
-                let end = Span { start: expr.span.end, end: expr.span.end };
+                let end = Span {
+                    start: expr.span.end,
+                    end: expr.span.end,
+                };
                 for unit in units {
                     error = error.fix(format!("say {unit}"), end, format!(" {unit}"));
                 }
@@ -319,13 +457,23 @@ impl Checker {
     }
 
     /// A constant that makes one side like the other.
-    fn constant_of_side(&mut self, mut error: Diagnostic, (expr, typed): Side<'_>, other: &Form) -> Diagnostic {
+    fn constant_of_side(
+        &mut self,
+        mut error: Diagnostic,
+        (expr, typed): Side<'_>,
+        other: &Form,
+    ) -> Diagnostic {
         for (text, constant, power) in CONSTANTS {
-            let Some(entry) = library::value(constant) else { continue };
+            let Some(entry) = library::value(constant) else {
+                continue;
+            };
             let factor = Form::dimension(&entry.result.dimension).power(form::Exponent::from(*power));
             let mended = self.unifier.resolve(&typed.form).times(&factor);
             let mended = self.with_open_angle(mended);
-            if error.fixes.len() >= MOST_REPAIRS || !self.unifier.could_be(&mended, other) || self.is_open_form(&typed.form) {
+            if error.fixes.len() >= MOST_REPAIRS
+                || !self.unifier.could_be(&mended, other)
+                || self.is_open_form(&typed.form)
+            {
                 continue;
             }
             error = with_edits(error, format!("write {text}"), appended(expr, text));
@@ -337,27 +485,41 @@ impl Checker {
         self.unifier.resolve(form).unknowns().any(|key| self.is_any(key))
     }
 
-    /// The neighbouring argument in its place.
-    fn swap_repair(&self, error: Diagnostic, placed: &[Option<&Expr>], place: usize) -> Diagnostic {
-        let others = (0..placed.len()).filter(|other| *other != place);
-        let other = others.filter_map(|other| placed[other]).next();
-        match (placed[place], other) {
-            (Some(one), Some(other)) => {
-                let (first, second) = if one.span.start < other.span.start { (one, other) } else { (other, one) };
-                let texts = [self.text(first.span).to_owned(), self.text(second.span).to_owned()];
-                let [a, b] = texts;
-                with_edits(error, "swap the arguments".into(), vec![(first.span, b), (second.span, a)])
-            }
-            _ => error,
-        }
+    /// Two arguments that stand in each other's place.
+    pub(in crate::check) fn swapped_arguments(
+        &self,
+        (name, signature): (&Name, &str),
+        one: Side<'_>,
+        other: Side<'_>,
+    ) -> Diagnostic {
+        let words = [self.describe(&one.1.form), self.describe(&other.1.form)];
+        let (first, second) = (one.0.span, other.0.span);
+        let message = format!(
+            "{} is given {} and {} in each other's place",
+            name.node, words[0], words[1]
+        );
+        let edits = vec![
+            (first, self.text(second).to_owned()),
+            (second, self.text(first).to_owned()),
+        ];
+        let error = Diagnostic::error("wrong-argument", message, first, &words[0]).and(second, &words[1]);
+        with_edits(
+            error.note(format!("it is {signature}")),
+            "swap the arguments".into(),
+            edits,
+        )
     }
 
     /// The redshift that stands nearest: an argument of a function of z in
     /// one of the expressions, or a name `z` in sight.
     fn redshift_near(&self, exprs: &[&Expr]) -> Option<String> {
-        let found = exprs.iter().find_map(|expr| argument_z(expr)).map(|span| self.text(span).to_owned());
+        let found = exprs
+            .iter()
+            .find_map(|expr| argument_z(expr))
+            .map(|span| self.text(span).to_owned());
         let named = || {
-            let in_sight = self.local("z").is_some() || self.environment.latest(self.via_space(), "z").is_some();
+            let in_sight =
+                self.local("z").is_some() || self.environment.latest(self.via_space(), "z").is_some();
             in_sight.then(|| "z".to_owned())
         };
         found.or_else(named)
@@ -366,7 +528,10 @@ impl Checker {
 
 fn frame_note(z: Option<&str>) -> String {
     match z.and_then(|text| text.parse::<f64>().ok()) {
-        Some(z) => format!("proper is comoving over 1+z: at z = {z} they differ by a factor of {}", crate::eval::plain_number(1.0 + z)),
+        Some(z) => format!(
+            "proper is comoving over 1+z: at z = {z} they differ by a factor of {}",
+            crate::eval::plain_number(1.0 + z)
+        ),
         None => "proper is comoving over 1+z, so they agree only today".into(),
     }
 }
@@ -378,13 +543,68 @@ fn with_edits(mut error: Diagnostic, title: String, edits: Vec<(Span, String)>) 
 
 /// Appends a factor to an expression, with parentheses round a sum.
 fn appended(expr: &Expr, text: &str) -> Vec<(Span, String)> {
-    let end = Span { start: expr.span.end, end: expr.span.end };
-    let start = Span { start: expr.span.start, end: expr.span.start };
+    let end = Span {
+        start: expr.span.end,
+        end: expr.span.end,
+    };
+    let start = Span {
+        start: expr.span.start,
+        end: expr.span.start,
+    };
     if is_sum(expr) {
         vec![(start, "(".into()), (end, format!(") {text}"))]
     } else {
         vec![(end, format!(" {text}"))]
     }
+}
+
+/// Whether a bracket needs parentheses round it where it stands.
+#[derive(Clone, Copy, PartialEq, Eq)]
+enum Wrap {
+    /// Among operators.
+    Operand,
+    /// As a whole argument.
+    Argument,
+}
+
+/// Adds or completes a bracket: `(x [Mpc at z])`.
+fn bracketed(error: Diagnostic, expr: &Expr, unit: &str, what: &str, title: &str, wrap: Wrap) -> Diagnostic {
+    if unit.is_empty() {
+        return error;
+    }
+    if let ExprKind::Express(_, bracket) = &ungrouped(expr).kind {
+        let inside = Span {
+            start: bracket.unit.span.end,
+            end: bracket.unit.span.end,
+        };
+        return error.fix(title, inside, format!(" {what}"));
+    }
+    let title = format!("{title}: [{unit} {what}]");
+    let (start, end) = (
+        Span {
+            end: expr.span.start,
+            ..expr.span
+        },
+        Span {
+            start: expr.span.end,
+            ..expr.span
+        },
+    );
+    let sum = is_sum(expr);
+    let (mut open, mut close) = (String::new(), format!(" [{unit} {what}]"));
+    if sum {
+        open.push('(');
+        close.insert(0, ')');
+    }
+    if wrap == Wrap::Operand {
+        open.push('(');
+        close.push(')');
+    }
+    let mut edits = vec![(end, close)];
+    if !open.is_empty() {
+        edits.insert(0, (start, open));
+    }
+    with_edits(error, title, edits)
 }
 
 /// Whether an expression binds more loosely than a product.
@@ -416,14 +636,19 @@ fn is_bare_literal(expr: &Expr) -> bool {
 
 /// `Mpc/h` without its h.
 fn without_h(text: &str) -> String {
-    text.split_once("/h").map(|(before, after)| format!("{before}{after}")).unwrap_or_default()
+    text.split_once("/h")
+        .map(|(before, after)| format!("{before}{after}"))
+        .unwrap_or_default()
 }
 
 /// `log10(x)` where `2.5*log10(x)` is meant.
 fn log_repair(error: Diagnostic, expr: &Expr) -> Diagnostic {
     match &expr.kind {
         ExprKind::Call(name, _) if name.node == "log10" => {
-            let start = Span { start: expr.span.start, end: expr.span.start };
+            let start = Span {
+                start: expr.span.start,
+                end: expr.span.start,
+            };
             error.fix("write it in magnitudes", start, "2.5*")
         }
         _ => error,
@@ -435,18 +660,26 @@ fn log_repair(error: Diagnostic, expr: &Expr) -> Diagnostic {
 fn argument_z(expr: &Expr) -> Option<Span> {
     match &expr.kind {
         ExprKind::Call(name, arguments) => {
-            let takes_z = library::function(&name.node)
-                .is_some_and(|entry| entry.arguments.first().is_some_and(|argument| argument.name == "z"));
-            arguments.iter().enumerate().find_map(|(place, argument)| match argument {
-                Argument::Positional(value) if takes_z && place == 0 => Some(value.span),
-                Argument::Positional(value) => argument_z(value),
-                Argument::Named(word, value) => (word.node == "z").then_some(value.span),
-                Argument::Equation(left, right) => argument_z(left).or_else(|| argument_z(right)),
-            })
+            let takes_z = library::function(&name.node).is_some_and(|entry| {
+                entry
+                    .arguments
+                    .first()
+                    .is_some_and(|argument| argument.name == "z")
+            });
+            arguments
+                .iter()
+                .enumerate()
+                .find_map(|(place, argument)| match argument {
+                    Argument::Positional(value) if takes_z && place == 0 => Some(value.span),
+                    Argument::Positional(value) => argument_z(value),
+                    Argument::Named(word, value) => (word.node == "z").then_some(value.span),
+                    Argument::Equation(left, right) => argument_z(left).or_else(|| argument_z(right)),
+                })
         }
-        ExprKind::Group(inner) | ExprKind::Unary(_, inner) | ExprKind::Express(inner, _) | ExprKind::Under(inner, _) => {
-            argument_z(inner)
-        }
+        ExprKind::Group(inner)
+        | ExprKind::Unary(_, inner)
+        | ExprKind::Express(inner, _)
+        | ExprKind::Under(inner, _) => argument_z(inner),
         ExprKind::Binary(_, left, right) => argument_z(left).or_else(|| argument_z(right)),
         _ => None,
     }
