@@ -12,8 +12,10 @@ pub mod early;
 pub mod future;
 mod geometry;
 pub mod growth;
+pub mod halo;
 pub mod horizon;
 pub mod inverse;
+pub mod power;
 mod template;
 pub mod values;
 
@@ -30,7 +32,7 @@ pub use uom::si::f64::{
 use uom::si::{length::meter, time::second};
 
 /// The entries of these chapters, in the order of the handbook.
-pub static ENTRIES: [&[Entry]; 7] = [
+pub static ENTRIES: [&[Entry]; 9] = [
     values::ENTRIES,
     background::ENTRIES,
     future::ENTRIES,
@@ -38,6 +40,8 @@ pub static ENTRIES: [&[Entry]; 7] = [
     horizon::ENTRIES,
     early::ENTRIES,
     growth::ENTRIES,
+    power::ENTRIES,
+    halo::ENTRIES,
 ];
 
 /// What a function of this library returns.

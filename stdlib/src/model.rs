@@ -17,6 +17,7 @@ pub use parameters::PARAMETERS;
 pub use published::BASES;
 
 use crate::cosmology::growth::GrowthCell;
+use crate::cosmology::power::SpectrumCell;
 use crate::dimension::Dimension;
 use budget::{Budget, Values};
 use expansion::Expansion;
@@ -109,6 +110,7 @@ pub struct Model {
     expansion: Expansion,
     history: OnceLock<Result<History, DomainError>>,
     growth: GrowthCell,
+    spectrum: SpectrumCell,
 }
 
 impl Model {
@@ -125,6 +127,7 @@ impl Model {
             expansion,
             history: OnceLock::new(),
             growth: GrowthCell::default(),
+            spectrum: SpectrumCell::default(),
         }
     }
 
@@ -201,6 +204,11 @@ impl Model {
     /// Its linear growth.
     pub(crate) fn growth(&self) -> &GrowthCell {
         &self.growth
+    }
+
+    /// Its linear power spectrum.
+    pub(crate) fn power_cell(&self) -> &SpectrumCell {
+        &self.spectrum
     }
 
     /// One of its integrals.

@@ -26,7 +26,7 @@ use std::sync::OnceLock;
 const START: f64 = -23.025_850_929_940_457;
 const END: f64 = 16.6;
 /// Step in ln a: the method is of order 10, its error below 1e-15 per step.
-const STEP: f64 = 0.25;
+const STEP: f64 = 0.125;
 /// Growth is not followed closer to a turnaround than this in 1 + z: q is
 /// infinite there.
 const MARGIN: f64 = 1.0 / 64.0;

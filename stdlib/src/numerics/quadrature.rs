@@ -32,6 +32,11 @@ fn rule() -> &'static [(f64, f64); POINTS] {
     })
 }
 
+/// The points of the rule in (−1, 1) and their weights, in rising order.
+pub fn points() -> &'static [(f64, f64); POINTS] {
+    rule()
+}
+
 /// `∫ₐᵇ f dx` by one 16-point Gauss–Legendre rule: exact to the last digits
 /// for a function that is smooth on the scale of the interval.
 pub fn legendre(a: f64, b: f64, mut f: impl FnMut(f64) -> f64) -> f64 {

@@ -149,7 +149,7 @@ pub static ENTRIES: &[Entry] = &[
         formula: "a = 1/(1+z)",
         source: WEINBERG,
         example: "scale_factor(3) is 0.250",
-        definition: Definition::Cosmology(|model, x| Ok(model.scale_factor(redshift(x, 0)?))),
+        definition: Definition::Function(|x| Ok(1.0 / redshift(x, 0)?.stretch())),
         ..BLANK
     },
     Entry {
