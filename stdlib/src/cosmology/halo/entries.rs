@@ -86,7 +86,7 @@ pub static ENTRIES: &[Entry] = &[
         formula: "M = (4π/3) Δ_vir(z) ρ_c(z) r³",
         validity: FIT,
         source: BRYAN,
-        example: "r_vir(1e8 Msun/h, 9) under einstein_de_sitter is 0.784 kpc/h within 0.2%",
+        example: "r_vir(1e8 Msun/h, 9) [kpc/h for h] under einstein_de_sitter is 0.784 kpc/h within 0.2%",
         definition: Definition::Cosmology(|model, x| {
             Ok(model.halo_radius(x[0], Edge::Virial, redshift(x, 1)?)?.value)
         }),
@@ -255,7 +255,7 @@ pub static ENTRIES: &[Entry] = &[
         usual_unit: "Mpc",
         formula: "M = (4π/3) Ωm ρ_c R³",
         source: "Press & Schechter 1974, ApJ 187, 425",
-        example: "lagrangian_radius(2.786e14 Msun) under planck2018 is 8 Mpc/h within 0.1%",
+        example: "lagrangian_radius(2.786e14 Msun) [cMpc/h for h] under planck2018 is 8 cMpc/h within 0.1%",
         definition: Definition::Cosmology(|model, x| Ok(model.lagrangian_radius(x[0])?.value)),
         ..CHAPTER
     },
