@@ -203,6 +203,7 @@ static KNOWN: &[Known] = &[
     known_as(VOLUME.per(TIME), "a volume per time", "Mpc^3/yr").expanding(3, "cMpc^3/yr"),
     known_as(AREA.per(TIME), "an area per time", ""),
     known_as(LENGTH_RATE, "a rate per length", "1/s/Mpc"),
+    known_as(LENGTH.times(ANGLE), "a length times an angle", "Mpc rad").expanding(1, "cMpc rad"),
     known_as(LENGTH.per(ANGLE), "a length per angle", "kpc/arcsec").expanding(1, "ckpc/arcsec"),
     known_as(AREA.per(SOLID_ANGLE), "an area per solid angle", "kpc^2/arcsec^2")
         .expanding(2, "ckpc^2/arcsec^2"),
