@@ -42,30 +42,29 @@ impl Model {
     }
 
     /// Comoving radius that the particle horizon approaches in the far
-    /// future, or has when a recollapsing model ends. Infinite in a model
-    /// without an event horizon.
+    /// future, or has when a recollapsing model ends.
     ///
     /// # Errors
-    /// Where there was no big bang.
+    /// Where there was no big bang, or it grows without limit.
     pub fn particle_horizon_limit(&self) -> Found<Length> {
         let past = self.since_beginning(Kind::Light, Redshift::TODAY)?;
-        let future = self
-            .to_end(Kind::Light, Redshift::TODAY)?
-            .unwrap_or(f64::INFINITY);
+        let future = self.to_end(Kind::Light, Redshift::TODAY)?.ok_or_else(|| {
+            undefined("the particle horizon of this model grows without limit: it has no event horizon")
+        })?;
         Ok(length((past + future) * self.hubble_length_m()))
     }
 
     /// Proper radius at z of the event horizon: from beyond, light emitted at
-    /// that time never arrives. Infinite where every event is seen in the
-    /// end.
+    /// that time never arrives.
     ///
     /// # Errors
-    /// Where the model never had this redshift or its end is unknown.
+    /// Where every event is seen in the end, as in models that slow down for
+    /// ever; where the model never had this redshift or its end is unknown.
     ///
     /// # Source
     /// Davis & Lineweaver 2004, PASA 21, 97, appendix A.
     pub fn event_horizon(&self, z: Redshift) -> Found<Length> {
-        let chi = self.to_end(Kind::Light, z)?.unwrap_or(f64::INFINITY);
+        let chi = self.event_horizon_comoving(z)?;
         Ok(length(chi * self.hubble_length_m() / z.stretch()))
     }
 

@@ -298,7 +298,7 @@ pub static ENTRIES: &[Entry] = &[
         formula: "dn/d ln M = (ρ_m/M) A √(2a/π) (1 + (aν²)^−p) ν exp(−aν²/2) |d ln σ/d ln M|, A = 0.3222, a = 0.707, p = 0.3",
         validity: NEEDS_SIGMA8,
         source: "Sheth & Tormen 1999, MNRAS 308, 119",
-        example: "sheth_tormen(1e14 Msun)/press_schechter(1e14 Msun) under planck2018 is between 0.8 and 1.6",
+        example: "sheth_tormen(1e13 Msun) < press_schechter(1e13 Msun) under planck2018",
         definition: Definition::Cosmology(|model, x| {
             model.halo_counts_per_m3(x[0], redshift(x, 1)?, Counts::ShethTormen)
         }),
