@@ -95,6 +95,8 @@ pub struct Checker {
     under: u32,
     /// A function's body: its model comes with the call.
     in_function: bool,
+    /// The name being defined, which its definition cannot refer to.
+    defining: Option<(Space, ast::Name)>,
     measures: FxHashMap<SmolStr, Arc<Measure>>,
     lost: FxHashSet<SmolStr>,
     loaded: FxHashSet<usize>,
@@ -227,7 +229,8 @@ impl Checker {
     pub fn unit_of(&self, form: &Form, unit: Option<&Arc<Measure>>) -> (String, f64) {
         let form = self.settled(form);
         if let Some(measure) = unit.filter(|measure| is_unit_for(measure, &form)) {
-            return (measure.text.to_string(), measure.factor);
+            let text = if measure.text == "1" { "" } else { measure.text.as_str() };
+            return (text.to_owned(), measure.factor);
         }
         let text = self.unit_text(&without_open_angle(form));
         let factor = crate::parser::parse_unit(&text).map_or(1.0, |unit| self.size_of(&unit));

@@ -153,6 +153,10 @@ pub fn binding_parts(arguments: &[Argument]) -> Option<BindingParts<'_>> {
 impl Checker {
     pub(super) fn infer_call(&mut self, name: &Name, arguments: &[Argument], span: Span) -> Typed {
         let [_, functions] = self.spaces();
+        if let Some(diagnostic) = self.own_definition(functions, &name.node, name.span) {
+            self.infer_arguments(arguments);
+            return self.wrong(diagnostic);
+        }
         if let Some(id) = self.environment.latest(functions, &name.node) {
             return self.infer_user_call(id, name, arguments, span);
         }

@@ -5,6 +5,7 @@ use super::typed::{Instance, Kind, Measure, Typed};
 use super::unify::Sort;
 use super::{Checker, Meaning, Note, Space, error, library};
 use crate::ast::{self, BinaryOp, Expr, ExprKind, Name, UnaryOp};
+use crate::diagnostic::Diagnostic;
 use crate::source::{Span, Spanned};
 use num_rational::Ratio;
 use smol_str::SmolStr;
@@ -145,6 +146,9 @@ impl Checker {
             };
         }
         let [values, _] = self.spaces();
+        if let Some(diagnostic) = self.own_definition(values, name, span) {
+            return self.wrong(diagnostic);
+        }
         if let Some(id) = self.environment.latest(values, name) {
             return self.infer_binding(id, span);
         }
@@ -159,6 +163,15 @@ impl Checker {
         }
         let diagnostic = self.unknown_name(name, span);
         self.wrong(diagnostic)
+    }
+
+    /// The mistake of a definition that refers to itself. At the prompt the
+    /// name means what it meant before.
+    pub(super) fn own_definition(&self, space: Space, name: &str, span: Span) -> Option<Diagnostic> {
+        let (own, defining) = self.defining.as_ref()?;
+        let before = self.at_prompt && self.environment.latest(space, name).is_some();
+        (*own == space && defining.node == name && !before)
+            .then(|| error::used_before(name, span, defining.span))
     }
 
     fn infer_binding(&mut self, id: super::BindingId, span: Span) -> Typed {
@@ -252,12 +265,19 @@ impl Checker {
         }
     }
 
-    /// A product with a plain number is shown as the other factor is.
+    /// A product with a plain number is shown as the other factor is, and one
+    /// of powers of a unit in a power of it.
     fn unit_of_product(&self, a: &Typed, b: &Typed) -> Option<Arc<Measure>> {
         match (self.is_plain(a), self.is_plain(b)) {
             (true, _) => b.unit.clone(),
             (false, true) => a.unit.clone(),
-            (false, false) => None,
+            (false, false) => {
+                let (one, other) = (a.unit.as_ref()?, b.unit.as_ref()?);
+                let ((symbol, power), (same, more)) = (simple_power(&one.text)?, simple_power(&other.text)?);
+                (symbol == same)
+                    .then(|| power_of(one, symbol, power, power + more))
+                    .flatten()
+            }
         }
     }
 
@@ -322,7 +342,14 @@ impl Checker {
         if *power.denom() != 1 {
             form = self.with_open_tally(form);
         }
-        Typed::quantity(form)
+        let unit = base.unit.as_ref().and_then(|unit| {
+            let (symbol, old) = simple_power(&unit.text)?;
+            let new = power * old;
+            new.is_integer()
+                .then(|| power_of(unit, symbol, old, *new.numer()))
+                .flatten()
+        });
+        Typed::quantity(form).shown_in(unit)
     }
 
     /// A root leaves a counting unit open: its error is how one counts.
@@ -491,6 +518,35 @@ impl Checker {
     pub(super) fn local(&self, name: &str) -> Option<&super::Local> {
         self.locals.iter().rev().find(|local| local.name == name)
     }
+}
+
+/// A unit that is one symbol to a whole power: `km`, `km^2`.
+fn simple_power(text: &str) -> Option<(&str, i32)> {
+    let (symbol, power) = text.split_once('^').unwrap_or((text, "1"));
+    let is_symbol = !symbol.is_empty() && symbol.chars().all(char::is_alphabetic);
+    is_symbol
+        .then(|| power.parse().ok().map(|power| (symbol, power)))
+        .flatten()
+}
+
+/// A unit, which is `symbol` to the power `old`, to the power `new` instead.
+fn power_of(unit: &Measure, symbol: &str, old: i32, new: i32) -> Option<Arc<Measure>> {
+    if old == 0 || new == 0 {
+        return None;
+    }
+    let text = if new == 1 {
+        symbol.into()
+    } else {
+        format!("{symbol}^{new}").into()
+    };
+    let factor = libm::pow(unit.factor, f64::from(new) / f64::from(old));
+    let form = unit.form.power(Ratio::new(new, old));
+    Some(Arc::new(Measure {
+        text,
+        factor,
+        form,
+        ..unit.clone()
+    }))
 }
 
 /// Whether this is the written number one.

@@ -1,21 +1,21 @@
 //! Statements: each definition becomes a binding, each output a task.
 
-use super::environment::{self, Function, Meaning, Place, Space, Table, UserUnit, Value};
+mod read;
+mod unit;
+mod warn;
+
+use super::environment::{Function, Meaning, Place, Space, Value};
 use super::form::Form;
 use super::typed::{Generaliser, Instance, Kind, Measure, Scheme, Typed};
 use super::unify::Sort;
-use super::{BindingId, Checker, Head, Local, NoHead, Outside, call, error, library};
+use super::{BindingId, Checker, Head, Local, NoHead, Outside, error};
 use crate::ast::{
-    self, BinaryOp, Binding, Bracket, Definition as Written, Expr, ExprKind, Name, Parameter, Plot, Read,
-    Statement, StatementKind, Text,
+    self, Binding, Bracket, Definition as Written, Expr, Name, Parameter, Plot, Statement, StatementKind,
+    Text,
 };
 use crate::source::{Source, Span};
-use smallvec::SmallVec;
 use smol_str::SmolStr;
 use std::sync::Arc;
-use zij_stdlib::catalogue::Definition;
-use zij_stdlib::dimension::LENGTH;
-use zij_stdlib::units;
 
 /// Something the sheet asks to be shown.
 #[derive(Clone)]
@@ -195,7 +195,9 @@ impl Checker {
     /// Checks and binds a value; `None` where it could not be bound.
     fn value_statement(&mut self, definition: Written, given: bool) -> Option<BindingId> {
         let outer = self.locals.len();
+        let defining = self.defining.replace((self.spaces()[0], definition.name.clone()));
         let mut typed = self.infer_with_wheres(&definition.value, &definition.wheres);
+        self.defining = defining;
         self.end_wheres(outer);
         typed = self.annotated(&definition, typed);
         let instead = if given {
@@ -328,7 +330,9 @@ impl Checker {
             });
         }
         let inner = self.locals.len();
+        let defining = self.defining.replace((self.spaces()[1], definition.name.clone()));
         let result = self.infer_with_wheres(&definition.value, &definition.wheres);
+        self.defining = defining;
         self.end_wheres(inner);
         self.locals.truncate(outer);
         let result = self.annotated(&definition, result);
@@ -558,301 +562,6 @@ impl Checker {
             rests_on: std::mem::take(&mut self.rests_on),
         };
         self.tasks.push(Task::Table(task));
-    }
-
-    fn read_statement(&mut self, read: Read, outside: &dyn Outside) {
-        let duplicate = self.is_duplicate(&read.name, Space::Value);
-        let columns = match outside.head(&read.path.node) {
-            Ok(head) => Some(self.columns(&read, head)),
-            Err(reason) => {
-                self.report(match reason {
-                    NoHead::Unreadable(reason) => error::cannot_read(read.path.span, &reason),
-                    NoHead::Malformed(reason) => error::bad_data(read.path.span, &reason),
-                });
-                None
-            }
-        };
-        let Some(columns) = columns else {
-            if !duplicate {
-                self.bind(&read.name, Space::Value, Meaning::Broken);
-            }
-            return;
-        };
-        if let Some(only) = &read.only {
-            self.check_selection(only, &columns);
-        }
-        if !duplicate {
-            let name = read.name.clone();
-            let path = read.path.node.clone();
-            let table = Table { read, columns, path };
-            self.bind(&name, Space::Value, Meaning::Table(Arc::new(table)));
-        }
-    }
-
-    fn columns(&mut self, read: &Read, head: Head) -> Vec<environment::Column> {
-        let names: Vec<String> = head.columns.iter().map(|(name, _)| name.clone()).collect();
-        for (name, _) in &read.units {
-            if !names.iter().any(|known| *known == name.node) {
-                let known: Vec<&str> = names.iter().map(String::as_str).collect();
-                self.report(error::unknown_column(name, &read.name.node, &known));
-            }
-        }
-        let mut columns = Vec::new();
-        for (place, (name, unit)) in head.columns.into_iter().enumerate() {
-            let with = read.units.iter().find(|(known, _)| known.node == name);
-            let measure = match (with, unit) {
-                (Some((_, bracket)), _) => self.measure(&bracket.unit, false),
-                (None, Some(unit)) => self.measure_of_head(read, &name, &unit),
-                (None, None) => None,
-            };
-            let typed = match &measure {
-                Some(measure) => Typed::quantity(self.asked(measure)).shown_in(Some(Arc::clone(measure))),
-                None => Typed::quantity(Form::number()),
-            };
-            let factor = measure.map_or(1.0, |measure| measure.factor);
-            let scheme = self.scheme(typed, |sort| matches!(sort, Sort::Along(_)));
-            columns.push(environment::Column {
-                name: name.into(),
-                scheme,
-                factor,
-                place,
-            });
-        }
-        columns
-    }
-
-    fn measure_of_head(&mut self, read: &Read, column: &str, text: &str) -> Option<Arc<Measure>> {
-        let resolved = crate::parser::parse_unit(text)
-            .ok()
-            .and_then(|unit| super::units::resolve_library(&unit));
-        if resolved.is_none() {
-            self.report(error::unit_of_column(read.path.span, column, text));
-        }
-        resolved.map(Arc::new)
-    }
-
-    /// Column names stand bare in `only`.
-    fn check_selection(&mut self, only: &Expr, columns: &[environment::Column]) {
-        let outer = self.locals.len();
-        for column in columns {
-            let instance = Instance::new(&mut self.unifier, &column.scheme.bound);
-            let typed = column.scheme.typed.clone();
-            let form = instance.form(&typed.form);
-            let typed = Typed { form, ..typed };
-            self.locals.push(Local {
-                name: column.name.clone(),
-                span: only.span,
-                typed,
-                used: true,
-            });
-        }
-        self.infer_truth(only);
-        self.locals.truncate(outer);
-    }
-
-    fn include_statement(&mut self, path: &Text, outside: &dyn Outside) {
-        if self.including.contains(&path.node) {
-            self.report(error::include_cycle(path.span, &path.node));
-            return;
-        }
-        if self.imported.contains(&path.node) {
-            return;
-        }
-        self.imported.push(path.node.clone());
-        match outside.sheet(&path.node) {
-            Ok(source) => {
-                let tasks = self.tasks.len();
-                let id = self.add_source(source);
-                self.including.push(path.node.clone());
-                self.check_source(id, outside);
-                self.including.pop();
-                // An included sheet lends its definitions; its outputs are its own.
-                self.tasks.truncate(tasks);
-            }
-            Err(reason) => self.report(error::cannot_read(path.span, &reason)),
-        }
-    }
-
-    fn unit_statement(&mut self, name: &Name, value: &Expr) {
-        let typed = self.infer_quantity(value);
-        if typed.is_unknown() || !self.may_name_unit(name) {
-            self.lost.insert(name.node.clone());
-            return;
-        }
-        let Some((factor, measure)) = self.unit_size(value, &typed) else {
-            self.lost.insert(name.node.clone());
-            self.report(error::unit_is_no_literal(value.span));
-            return;
-        };
-        let measure = Measure {
-            text: name.node.clone(),
-            factor,
-            slashed: SmallVec::new(),
-            ..measure
-        };
-        self.measures.clear();
-        self.environment.units.insert(
-            name.node.clone(),
-            UserUnit {
-                measure,
-                place: self.place(name.span),
-            },
-        );
-    }
-
-    /// The size and dimension of what a unit is defined as.
-    fn unit_size(&mut self, value: &Expr, typed: &Typed) -> Option<(f64, Measure)> {
-        let size = self.fold(value)?;
-        let form = self.settled(&typed.form);
-        let written = typed.unit.as_ref();
-        let measure = Measure {
-            text: SmolStr::default(),
-            factor: 1.0,
-            framed: written.is_some_and(|unit| unit.framed),
-            names_length: written.is_some_and(|unit| unit.names_length) || form == Form::dimension(&LENGTH),
-            form,
-            slashed: SmallVec::new(),
-        };
-        (size > 0.0 && size.is_finite()).then_some((size, measure))
-    }
-
-    /// The value of an expression of written numbers and constants.
-    fn fold(&self, expr: &Expr) -> Option<f64> {
-        match &expr.kind {
-            ExprKind::Quantity(quantity) => {
-                let factor = quantity.unit.as_ref().map_or(1.0, |unit| self.size_of(unit));
-                Some(quantity.number.value * factor)
-            }
-            ExprKind::Group(inner) | ExprKind::Express(inner, Bracket { conversion: None, .. }) => {
-                self.fold(inner)
-            }
-            ExprKind::Name(name) => match library::value(name)?.definition {
-                Definition::Constant(value, _) if self.environment.latest(Space::Value, name).is_none() => {
-                    Some(value)
-                }
-                _ => None,
-            },
-            ExprKind::Unary(op, inner) if op.node == ast::UnaryOp::Negate => {
-                self.fold(inner).map(|value| -value)
-            }
-            ExprKind::Binary(op, left, right) => {
-                let (a, b) = (self.fold(left)?, self.fold(right)?);
-                Some(match op.node {
-                    BinaryOp::Add => a + b,
-                    BinaryOp::Subtract => a - b,
-                    BinaryOp::Multiply => a * b,
-                    BinaryOp::Divide => a / b,
-                    BinaryOp::Power => libm::pow(a, b),
-                })
-            }
-            _ => None,
-        }
-    }
-
-    fn may_name_unit(&mut self, name: &Name) -> bool {
-        if units::find(&name.node).is_some() || name.node == "h" {
-            self.report(error::unit_of_library(name));
-            return false;
-        }
-        let unit = self.environment.units.get(&name.node).map(|unit| unit.place);
-        let tally = self
-            .environment
-            .tallies
-            .iter()
-            .find(|(known, _)| *known == name.node)
-            .map(|(_, place)| *place);
-        if let Some(first) = unit.or(tally) {
-            let here = (first.source == self.source).then_some(first.span);
-            let elsewhere = self.sources[usize::from(first.source)].name.to_string();
-            self.report(error::duplicate_name(name, here, &elsewhere));
-            return false;
-        }
-        if self.environment.latest(Space::Value, &name.node).is_some() {
-            self.report(error::unit_shadows_name(name));
-        }
-        true
-    }
-
-    fn tally_statement(&mut self, name: &Name) {
-        if self.at_prompt && self.environment.tally(&name.node).is_some() {
-            return;
-        }
-        if self.may_name_unit(name) {
-            self.measures.clear();
-            let place = self.place(name.span);
-            self.environment.tallies.push((name.node.clone(), place));
-        }
-    }
-
-    /// Warns once where a name of the library is bound anew.
-    fn warn_of_library_name(&mut self, name: &Name, function: bool) {
-        if self.in_library {
-            return;
-        }
-        let known = if function {
-            library::function(&name.node)
-        } else {
-            library::value(&name.node)
-        }
-        .is_some();
-        let word = function
-            && (call::BINDING_FORMS.iter().any(|(word, _)| *word == name.node)
-                || call::series_function(&name.node).is_some());
-        let [values, functions] = self.spaces();
-        let space = if function { functions } else { values };
-        if (known || word) && self.environment.latest(space, &name.node).is_none() {
-            self.report(error::rebinds_library(
-                name,
-                if function { "function" } else { "value" },
-            ));
-        }
-    }
-
-    /// Warns of values and functions that nothing rests on, in a sheet that
-    /// shows something.
-    pub(super) fn warn_of_unused(&mut self, source: u16, from: BindingId) {
-        let wrong = self
-            .diagnostics
-            .iter()
-            .any(|(_, diagnostic)| diagnostic.is_error());
-        if self.at_prompt || self.tasks.is_empty() || wrong {
-            return;
-        }
-        let unused: Vec<(Span, SmolStr)> = self.environment.bindings[from as usize..]
-            .iter()
-            .filter(|binding| !binding.used.get() && binding.place.source == source)
-            .filter(|binding| matches!(binding.space, Space::Value | Space::Function | Space::Model))
-            .map(|binding| (binding.place.span, binding.name.clone()))
-            .collect();
-        for (span, name) in unused {
-            self.diagnostics
-                .push((usize::from(source), error::unused(span, &name)));
-        }
-    }
-
-    /// Warns where a sheet has results that rest on a model and names none:
-    /// nobody could reproduce them once the default changes.
-    pub(super) fn warn_of_unstated_model(&mut self) {
-        let stated = self.at_prompt || self.environment.assumed.is_some();
-        let is_output = |task: &Task| match task {
-            Task::Show(show) => show.result,
-            Task::Claim(_) | Task::Table(_) => true,
-            Task::Help(_) => false,
-        };
-        let Some(used) = self.environment.model_used.filter(|_| !stated) else {
-            return;
-        };
-        if self.tasks.iter().any(is_output) {
-            let warning = error::model_not_stated(used.span);
-            self.diagnostics.push((usize::from(used.source), warning));
-        }
-    }
-
-    /// Says once that uncertainties are not carried yet.
-    pub(super) fn warn_of_uncertainty(&mut self, span: Span) {
-        if !std::mem::replace(&mut self.told_of_uncertainty, true) {
-            self.report(error::uncertainty_not_carried(span));
-        }
     }
 }
 

@@ -270,8 +270,11 @@ impl Run<'_> {
             frame: if comoving { Frame::Comoving } else { Frame::Proper },
             ..Shown::default()
         };
-        let about = head.about.as_ref().map(ToString::to_string);
-        let about = about.or_else(|| crate::output::frame_word(&shown).map(ToOwned::to_owned));
+        let word = crate::output::frame_word(&shown);
+        let about = match (&head.about, word) {
+            (Some(about), Some(word)) => Some(format!("{about} ({word})")),
+            (about, word) => about.as_ref().map(ToString::to_string).or(word.map(ToOwned::to_owned)),
+        };
         TableColumn {
             name: head.name.to_string(),
             unit,

@@ -299,7 +299,7 @@ fn names_bound(text: &str) -> FxHashMap<(bool, SmolStr), Span> {
         .collect()
 }
 
-fn used_before(name: &str, span: Span, later: Span) -> Diagnostic {
+pub(in crate::check) fn used_before(name: &str, span: Span, later: Span) -> Diagnostic {
     let itself = later.start < span.start;
     let message = if itself {
         format!("{name} is used in its own definition")

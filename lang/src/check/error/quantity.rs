@@ -327,7 +327,11 @@ impl Checker {
                 let z = self.redshift_near(&[it.value]);
                 error = error.note("a plain bracket changes the unit shown, never the frame");
                 if let Some(z) = z {
-                    error = error.fix(format!("take it along to z = {z}"), inside, format!(" at {z}"));
+                    error = error.fix(
+                        format!("take it along to redshift {z}"),
+                        inside,
+                        format!(" at {z}"),
+                    );
                 }
                 error.fix("take it as of today", inside, " today")
             }
@@ -395,7 +399,7 @@ impl Checker {
                 expr,
                 &unit,
                 &format!("at {z}"),
-                &format!("take it along to z = {z}"),
+                &format!("take it along to redshift {z}"),
                 wrap,
             ),
             None => bracketed(error, expr, &unit, "today", "take it as of today", wrap),
