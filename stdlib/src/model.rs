@@ -16,6 +16,7 @@ mod published;
 pub use parameters::PARAMETERS;
 pub use published::BASES;
 
+use crate::cosmology::early::Fits;
 use crate::cosmology::growth::GrowthCell;
 use crate::cosmology::power::SpectrumCell;
 use crate::dimension::Dimension;
@@ -111,6 +112,7 @@ pub struct Model {
     history: OnceLock<Result<History, DomainError>>,
     growth: GrowthCell,
     spectrum: SpectrumCell,
+    fits: Fits,
 }
 
 impl Model {
@@ -128,6 +130,7 @@ impl Model {
             history: OnceLock::new(),
             growth: GrowthCell::default(),
             spectrum: SpectrumCell::default(),
+            fits: Fits::default(),
         }
     }
 
@@ -157,7 +160,8 @@ impl Model {
         Values(&self.parameters).number(parameter)
     }
 
-    /// What the model leaves out or takes for granted, as sentences.
+    /// What the model leaves out or takes for granted, and which fits it was
+    /// asked for so far, as sentences.
     pub fn notes(&self) -> Vec<String> {
         let mut notes = Vec::new();
         let budget = &self.budget;
@@ -191,6 +195,7 @@ impl Model {
                 }
             }
         }
+        notes.extend(self.fits.notes());
         notes
     }
 
@@ -204,6 +209,11 @@ impl Model {
     /// Its linear growth.
     pub(crate) fn growth(&self) -> &GrowthCell {
         &self.growth
+    }
+
+    /// The fits it was asked for.
+    pub(crate) fn fits(&self) -> &Fits {
+        &self.fits
     }
 
     /// Its linear power spectrum.

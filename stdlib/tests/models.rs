@@ -202,7 +202,18 @@ fn notes_say_what_is_left_out() {
     assert_eq!(notes, ["no radiation (T_CMB = 0 K)"]);
     let notes = build("flat", &[H70, ("Ωm", 0.3), ("T_CMB", 2.7255)]).notes();
     assert_eq!(notes, ["Neff = 3.046 assumed", "neutrinos without mass"]);
-    assert!(build("planck2018", &[]).notes().is_empty());
+    let planck = build("planck2018", &[]);
+    planck.sound_horizon_drag().expect("a horizon");
+    assert!(planck.notes().is_empty());
+    // A fit is named once it was used.
+    let changed = build("planck2018", &[("ωc", 0.13)]);
+    assert!(changed.notes().is_empty());
+    changed.sound_horizon_drag().expect("a horizon");
+    let notes = changed.notes();
+    assert!(
+        notes.len() == 1 && notes[0].contains("Eisenstein & Hu 1998"),
+        "{notes:?}"
+    );
 }
 
 #[test]

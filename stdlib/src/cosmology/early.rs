@@ -4,7 +4,7 @@
 //! publication where the model has them and nothing that moves them was
 //! changed. Else they are the fits of Hu & Sugiyama 1996 and Eisenstein & Hu
 //! 1998, which are 0.2 % and 3.7 % away from a full calculation of
-//! recombination: [`Model::recombination_source`] says which.
+//! recombination: [`Model::notes`] then names the fit.
 
 mod entries;
 
@@ -15,11 +15,25 @@ use crate::model::Model;
 use crate::model::parameters::id;
 use crate::numerics::quadrature::tail_above;
 use std::f64::consts::PI;
+use std::sync::atomic::{AtomicBool, Ordering};
 
-/// The fit for z_star.
-pub const FIT_OF_Z_STAR: &str = "z_star by the fit of Hu & Sugiyama 1996 (0.2 % above Planck's)";
-/// The fit for z_drag.
-pub const FIT_OF_Z_DRAG: &str = "z_drag by the fit of Eisenstein & Hu 1998 (3.7 % below Planck's)";
+/// Which fits a model has been asked for, to be named beside its results.
+#[derive(Default)]
+pub(crate) struct Fits {
+    star: AtomicBool,
+    drag: AtomicBool,
+}
+
+impl Fits {
+    /// The fits used so far, as sentences.
+    pub fn notes(&self) -> impl Iterator<Item = String> {
+        let star = "z_star by the fit of Hu & Sugiyama 1996, 0.2 % above a full calculation";
+        let drag = "z_drag by the fit of Eisenstein & Hu 1998, 3.7 % below a full calculation";
+        let used = [(&self.star, star), (&self.drag, drag)];
+        let used = used.map(|(flag, note)| flag.load(Ordering::Relaxed).then(|| note.to_owned()));
+        used.into_iter().flatten()
+    }
+}
 
 impl Model {
     /// Redshift of last scattering: the published one, or the fit of Hu &
@@ -31,6 +45,7 @@ impl Model {
         if let Some(published) = self.quoted(id::Z_STAR) {
             return Redshift::new(published);
         }
+        self.fits().star.store(true, Ordering::Relaxed);
         let (matter, baryons) = self.plasma()?;
         let first = 0.0783 * libm::pow(baryons, -0.238) / (1.0 + 39.5 * libm::pow(baryons, 0.763));
         let second = 0.560 / (1.0 + 21.1 * libm::pow(baryons, 1.81));
@@ -48,18 +63,9 @@ impl Model {
         if let Some(published) = self.quoted(id::Z_DRAG) {
             return Redshift::new(published);
         }
+        self.fits().drag.store(true, Ordering::Relaxed);
         let (matter, baryons) = self.plasma()?;
         Redshift::new(finite(drag_fit(matter, baryons))?)
-    }
-
-    /// Where z_star and z_drag come from: what is a fit, or nothing where
-    /// both are the publication's.
-    pub fn recombination_source(&self) -> Vec<&'static str> {
-        let fits = [(id::Z_STAR, FIT_OF_Z_STAR), (id::Z_DRAG, FIT_OF_Z_DRAG)];
-        let missing = fits
-            .into_iter()
-            .filter(|(parameter, _)| self.quoted(*parameter).is_none());
-        missing.map(|(_, note)| note).collect()
     }
 
     /// ωm (cold matter: massive neutrinos were radiation then) and ωb.
