@@ -31,7 +31,7 @@ mod unify;
 mod units;
 
 pub use environment::{BindingId, Environment, Meaning, Place, Space};
-pub use statement::{ClaimTask, Column, Face, Output, Show, TableTask, Task};
+pub use statement::{ClaimTask, Column, ExplainTask, Face, Output, Show, TableTask, Task};
 pub use typed::Measure;
 
 use crate::ast;

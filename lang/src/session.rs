@@ -3,6 +3,7 @@
 
 mod assist;
 mod evaluate;
+mod explain;
 mod repair;
 mod words;
 

@@ -2,7 +2,7 @@
 //! functions of whole series.
 
 use super::form::Form;
-use super::infer::{COMOVING, LITTLE_H};
+use super::infer::{COMOVING, LITTLE_H, unit_like};
 use super::typed::{Instance, Typed};
 use super::unify::Sort;
 use super::{BindingId, Checker, Local, Meaning, Note, Space, error, library};
@@ -282,8 +282,15 @@ impl Checker {
         }
         let typed = function.result.typed.clone();
         let form = self.unifier.resolve(&instance.form(&typed.form));
+        let unit = typed.unit.clone().or_else(|| {
+            let units = given.iter().filter_map(|one| one.actual.unit.as_deref());
+            units
+                .filter_map(|unit| unit_like(&self.unifier.settled(&form), unit))
+                .next()
+        });
         Typed {
             form: self.with_open_angle(form),
+            unit,
             ..typed
         }
     }
@@ -334,12 +341,13 @@ impl Checker {
         }
         let form = self.unifier.resolve(&form);
         let form = self.with_open_angle(form);
-        let keeps_unit = entry
-            .result
-            .variable
-            .is_some_and(|(_, exponent)| exponent == super::form::ONE);
         let usual = self.library_measure(entry.usual_unit);
-        Typed::quantity(form).shown_in(if keeps_unit { only_unit } else { usual })
+        let unit = match (entry.result.variable, &only_unit) {
+            (Some(_), Some(unit)) => unit_like(&self.unifier.settled(&form), unit),
+            (Some(_), None) => None,
+            (None, _) => usual,
+        };
+        Typed::quantity(form).shown_in(unit)
     }
 
     /// Makes each argument what the function takes, or says why it is not;

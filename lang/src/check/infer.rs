@@ -520,6 +520,21 @@ impl Checker {
     }
 }
 
+/// A power of the unit of an argument in which a result can be shown:
+/// `square(2 km)` in `km^2`.
+pub(super) fn unit_like(form: &Form, unit: &Measure) -> Option<Arc<Measure>> {
+    let (symbol, old) = simple_power(&unit.text)?;
+    let (key, own) = unit.form.parts().find(|(key, _)| *key != COMOVING)?;
+    let ratio = form::divide(form.exponent(key), own);
+    let new = ratio * old;
+    let same = form
+        .per(&unit.form.power(ratio))
+        .without(|key| key == COMOVING || key == ANGLE || key >= form::FIRST_BOUND);
+    (same.is_number() && new.is_integer())
+        .then(|| power_of(unit, symbol, old, *new.numer()))
+        .flatten()
+}
+
 /// A unit that is one symbol to a whole power: `km`, `km^2`.
 fn simple_power(text: &str) -> Option<(&str, i32)> {
     let (symbol, power) = text.split_once('^').unwrap_or((text, "1"));

@@ -26,8 +26,25 @@ pub enum Task {
     Claim(ClaimTask),
     /// A table.
     Table(TableTask),
+    /// Where a value comes from.
+    Explain(ExplainTask),
     /// A page of the handbook.
     Help(Option<SmolStr>),
+}
+
+/// A value to explain.
+#[derive(Clone)]
+pub struct ExplainTask {
+    /// The value.
+    pub show: Show,
+    /// As written.
+    pub expr: Arc<Expr>,
+    /// The values of the sheet that it rests on, in order.
+    pub values: Vec<BindingId>,
+    /// The functions of the sheet that it rests on, in order.
+    pub functions: Vec<BindingId>,
+    /// The bindings before it.
+    pub limit: BindingId,
 }
 
 /// A value to show.
@@ -157,7 +174,7 @@ impl Checker {
             StatementKind::Expression(value, wheres) => self.expression_statement(value, wheres),
             StatementKind::Figure(_) => self.not_yet(span, "figure"),
             StatementKind::Correlate(..) => self.not_yet(span, "correlate"),
-            StatementKind::Explain(_) => self.not_yet(span, "explain"),
+            StatementKind::Explain(value) => self.explain_statement(value),
             StatementKind::Broken => {}
         }
         if self.record.is_none() {
@@ -497,6 +514,35 @@ impl Checker {
         let id = self.bind(&name, Space::Value, meaning);
         self.environment.binding(id).used.set(true);
         self.rests_on = rests_on;
+    }
+
+    fn explain_statement(&mut self, value: Expr) {
+        let typed = self.infer(&value);
+        if typed.is_unknown() {
+            return;
+        }
+        let closure = self.environment.closure(&self.rests_on);
+        let of_kind = |wanted: &dyn Fn(&Meaning) -> bool| -> Vec<BindingId> {
+            closure
+                .iter()
+                .copied()
+                .filter(|id| wanted(&self.environment.binding(*id).meaning))
+                .collect()
+        };
+        let values = of_kind(&|meaning| matches!(meaning, Meaning::Value(_)));
+        let functions = of_kind(&|meaning| matches!(meaning, Meaning::Function(_)));
+        let expr = Arc::new(value.clone());
+        let limit = self.environment.next();
+        self.show_expression(value, Vec::new(), typed, (false, None));
+        if let Some(Task::Show(show)) = self.tasks.pop() {
+            self.tasks.push(Task::Explain(ExplainTask {
+                show,
+                expr,
+                values,
+                functions,
+                limit,
+            }));
+        }
     }
 
     fn show_expression(

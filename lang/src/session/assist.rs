@@ -283,6 +283,7 @@ fn dimension_of(checker: &Checker, from: u32) -> Option<String> {
             Task::Show(show) if show.face.truth => Some("true or false".into()),
             Task::Show(show) => Some(checker.in_words(&checker.settled(&show.face.form))),
             Task::Claim(claim) => Some(checker.in_words(&checker.settled(&claim.face.form))),
+            Task::Explain(task) => Some(checker.in_words(&checker.settled(&task.show.face.form))),
             Task::Table(_) | Task::Help(_) => None,
         };
     }

@@ -5,7 +5,7 @@ use super::Files;
 use super::words::Units;
 use crate::ast::{self, Assertion, Expr, Tolerance};
 use crate::check::claim::{is_relative, written};
-use crate::check::{BindingId, Checker, ClaimTask, Face, Meaning, Show, TableTask, Task};
+use crate::check::{BindingId, Checker, ClaimTask, Face, Meaning, Output, Show, TableTask, Task};
 use crate::claim::{self, Allowance};
 use crate::data::{self, Data};
 use crate::diagnostic::Diagnostic;
@@ -50,12 +50,13 @@ pub(super) fn evaluate(checker: &Checker, files: &dyn Files, report: &mut Report
         checker,
         evaluator: Evaluator::new(&program),
         faults: Vec::new(),
+        model,
         misfits: Vec::new(),
     };
     for (task, nodes) in checker.tasks.iter().zip(&nodes) {
         report.items.push(run.item(task, nodes));
     }
-    report.model = run.model_report(model);
+    report.model = run.report_of_model();
     let faults = std::mem::take(&mut run.faults);
     report.faulted |= !run.misfits.is_empty();
     report.diagnostics.append(&mut run.misfits);
@@ -67,6 +68,12 @@ fn lower_task(lowering: &mut Lowering<'_>, task: &Task) -> Vec<NodeId> {
         Task::Show(show) => vec![lowering.output(&show.output, show.place.source)],
         Task::Table(table) => lowering.table(table),
         Task::Help(_) => Vec::new(),
+        Task::Explain(task) => {
+            let own = task.values.iter().map(|id| Output::Binding(*id));
+            let all = std::iter::once(task.show.output.clone()).chain(own);
+            all.map(|output| lowering.output(&output, task.show.place.source))
+                .collect()
+        }
         Task::Claim(task) => {
             let mut lower =
                 |expr: &Expr| lowering.expression(expr, task.limit, task.place.source, &task.rests_on);
@@ -143,10 +150,12 @@ fn tell_faults(checker: &Checker, faults: Vec<Fault>, report: &mut Report) {
     }
 }
 
-struct Run<'a> {
-    checker: &'a Checker,
+pub(super) struct Run<'a> {
+    pub(super) checker: &'a Checker,
     evaluator: Evaluator<'a>,
     faults: Vec<Fault>,
+    /// The node of the model assumed.
+    model: NodeId,
     /// Columns that do not fit their table.
     misfits: Vec<(usize, Diagnostic)>,
 }
@@ -164,11 +173,12 @@ impl Run<'_> {
             }
             Task::Claim(task) => Item::Claim(self.claim(task, nodes)),
             Task::Table(table) => Item::Table(self.table(table, nodes)),
+            Task::Explain(task) => Item::Text(self.explain(task, nodes)),
             Task::Help(topic) => Item::Text(help(topic.as_deref())),
         }
     }
 
-    fn show(&mut self, show: &Show, node: NodeId) -> Shown {
+    pub(super) fn show(&mut self, show: &Show, node: NodeId) -> Shown {
         let numbers = self.numbers(node, &show.face);
         let (unit, _) = self.checker.unit_of(&show.face.form, show.face.unit.as_ref());
         let form = self.checker.shown_form(&show.face);
@@ -198,7 +208,7 @@ impl Run<'_> {
     }
 
     /// The numbers of a node in the unit in which it is shown.
-    fn numbers(&mut self, node: NodeId, face: &Face) -> Numbers {
+    pub(super) fn numbers(&mut self, node: NodeId, face: &Face) -> Numbers {
         let Some(value) = self.value(node) else {
             return Numbers::Missing;
         };
@@ -272,8 +282,11 @@ impl Run<'_> {
         };
         let word = crate::output::frame_word(&shown);
         let about = match (&head.about, word) {
-            (Some(about), Some(word)) => Some(format!("{about} ({word})")),
-            (about, word) => about.as_ref().map(ToString::to_string).or(word.map(ToOwned::to_owned)),
+            (Some(about), Some(word)) if !about.contains(word) => Some(format!("{about} ({word})")),
+            (about, word) => about
+                .as_ref()
+                .map(ToString::to_string)
+                .or(word.map(ToOwned::to_owned)),
         };
         TableColumn {
             name: head.name.to_string(),
@@ -324,13 +337,13 @@ impl Run<'_> {
     }
 
     /// The model assumed, if it can be built.
-    fn model_report(&mut self, node: NodeId) -> Option<ModelReport> {
+    pub(super) fn report_of_model(&mut self) -> Option<ModelReport> {
         let assumed = self.checker.environment.assumed.as_ref();
         let used = self.checker.environment.model_used.is_some();
         if !used && assumed.is_none() {
             return None;
         }
-        let Value::Model(model) = self.evaluator.value(node).ok()? else {
+        let Value::Model(model) = self.evaluator.value(self.model).ok()? else {
             return None;
         };
         let name = match assumed {

@@ -18,8 +18,9 @@ impl Checker {
         } else {
             library::value(&name.node)
         };
-        // A one-letter symbol of the field is nobody's to keep.
-        let known = entry.is_some_and(|entry| entry.name == name.node || name.node.chars().count() > 1);
+        // A function of one letter is nobody's to keep; a constant, `c`, is.
+        let short = function && name.node.chars().count() == 1;
+        let known = entry.is_some_and(|entry| entry.name == name.node || !short);
         let word = function
             && (call::BINDING_FORMS.iter().any(|(word, _)| *word == name.node)
                 || call::series_function(&name.node).is_some());
@@ -62,7 +63,7 @@ impl Checker {
         let is_output = |task: &Task| match task {
             Task::Show(show) => show.result,
             Task::Claim(_) | Task::Table(_) => true,
-            Task::Help(_) => false,
+            Task::Explain(_) | Task::Help(_) => false,
         };
         let Some(used) = self.environment.model_used.filter(|_| !stated) else {
             return;
