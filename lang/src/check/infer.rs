@@ -282,7 +282,7 @@ impl Checker {
     }
 
     fn is_plain(&self, typed: &Typed) -> bool {
-        self.settled(&typed.form).is_number()
+        self.unifier.settled(&typed.form).is_number()
     }
 
     fn infer_sum(&mut self, op: Spanned<BinaryOp>, left: (&Expr, &Typed), right: (&Expr, &Typed)) -> Typed {
