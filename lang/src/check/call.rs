@@ -288,11 +288,8 @@ impl Checker {
                 .filter_map(|unit| unit_like(&self.unifier.settled(&form), unit))
                 .next()
         });
-        Typed {
-            form: self.with_open_angle(form),
-            unit,
-            ..typed
-        }
+        let form = self.with_open_angle(form);
+        self.bounded(Typed { form, unit, ..typed }, span)
     }
 
     fn infer_library_call(

@@ -1,7 +1,7 @@
 //! Dimensions in words and in field notation.
 
 use super::form::{self, FIRST_BOUND, FIRST_TALLY, Form, Key};
-use super::infer::COMOVING;
+use super::infer::{ANGLE, COMOVING};
 use super::typed::Typed;
 use super::{BindingId, Checker, Meaning};
 use num_rational::Ratio;
@@ -18,7 +18,12 @@ impl Checker {
         if resolved.unknowns().any(|key| self.is_any(key)) {
             return "a quantity of any dimension".into();
         }
-        self.in_words(&self.settled(&resolved))
+        let settled = self.settled(&resolved);
+        let is_angle = |key: Key| key >= form::FIRST_UNKNOWN && self.unifier.sort(key).along() == Some(ANGLE);
+        if resolved.unknowns().any(is_angle) && settled.has_other_dimension() {
+            return self.in_words(&settled.without(|key| key == ANGLE));
+        }
+        self.in_words(&settled)
     }
 
     /// The same, where “proper” has to be said.

@@ -256,13 +256,21 @@ impl Checker {
             BinaryOp::Add | BinaryOp::Subtract => self.infer_sum(op, (left, &a), (right, &b)),
             BinaryOp::Multiply => {
                 let unit = self.unit_of_product(&a, &b);
-                Typed::quantity(a.form.times(&b.form)).shown_in(unit)
+                self.bounded(Typed::quantity(a.form.times(&b.form)).shown_in(unit), op.span)
             }
             BinaryOp::Divide | BinaryOp::Power => {
                 let unit = self.is_plain(&b).then(|| a.unit.clone()).flatten();
-                Typed::quantity(a.form.per(&b.form)).shown_in(unit)
+                self.bounded(Typed::quantity(a.form.per(&b.form)).shown_in(unit), op.span)
             }
         }
+    }
+
+    /// What was found, unless a power in it is beyond all measure.
+    pub(super) fn bounded(&mut self, typed: Typed, span: Span) -> Typed {
+        if typed.form.is_unbounded() {
+            return self.wrong(error::power_too_large(span));
+        }
+        typed
     }
 
     /// A product with a plain number is shown as the other factor is, and one

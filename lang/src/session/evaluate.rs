@@ -365,17 +365,18 @@ impl Run<'_> {
 }
 
 fn parameters(model: &Model) -> Vec<(String, Numbers, String)> {
+    // A function of z is written out in the name of the model.
     let row = |(id, setting): &(usize, Setting)| {
         let parameter = &PARAMETERS[*id];
         let factor = size_of(parameter.usual_unit);
         let value = match setting {
             Setting::Number(value) => Numbers::Scalar(value / factor),
             Setting::List(values) => Numbers::Series(values.iter().map(|value| value / factor).collect()),
-            Setting::Function(_) => Numbers::Missing,
+            Setting::Function(_) => return None,
         };
-        (parameter.name.to_owned(), value, parameter.usual_unit.to_owned())
+        Some((parameter.name.to_owned(), value, parameter.usual_unit.to_owned()))
     };
-    model.parameters().iter().map(row).collect()
+    model.parameters().iter().filter_map(row).collect()
 }
 
 /// The size of a unit of the library.
