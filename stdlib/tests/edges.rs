@@ -37,6 +37,22 @@ fn z(value: f64) -> Redshift {
     Redshift::new(value).expect("a redshift")
 }
 
+/// Open, with neutrinos of these masses in eV.
+fn with_masses(electronvolts: &[f64]) -> Model {
+    let numbers = [
+        ("H0", km_s_mpc(70.0)),
+        ("Ωcb", 0.25),
+        ("ΩΛ", 0.7),
+        ("T_CMB", 2.7255),
+        ("Neff", 3.044),
+    ];
+    let mut given = settings(&numbers);
+    let joules = electronvolts.iter().map(|mass| mass * si::ELEMENTARY_CHARGE);
+    given.push((named("mν").expect("mν"), Setting::List(joules.collect())));
+    let base = BASES.iter().find(|base| base.name == "general").expect("general");
+    model::build(base, &given).expect("a model")
+}
+
 fn in_hubble_lengths(model: &Model, found: Found<Length>) -> f64 {
     let unit = model.hubble_distance(Redshift::TODAY).expect("c/H0").value;
     found.expect("a length").value / unit
@@ -65,6 +81,12 @@ fn thirty_digit_integrals_are_met_from_the_far_future_to_a_redshift_of_a_billion
         ("phantom", make("flat", &[("Ωm", 0.3), ("w0", -1.3)])),
         ("open", make("general", &[("Ωm", 0.25), ("ΩΛ", 0.6)])),
     ];
+    let models = models.into_iter().chain([
+        ("light", with_masses(&[1e-6, 1e-6, 1e-6])),
+        ("massive", with_masses(&[0.05, 0.05, 0.1])),
+        ("heavy", with_masses(&[10.0])),
+    ]);
+    let models: Vec<_> = models.collect();
     let mut failures = Vec::new();
     for (name, quantity, redshift, expect) in EDGES {
         let model = &models.iter().find(|(known, _)| known == name).expect("a model").1;
