@@ -7,8 +7,9 @@ pub(super) const RANGE_POINTS: usize = 10_000_000;
 /// Numbers kept in memory at once in all series: 1 GiB.
 pub(super) const NUMBERS_KEPT: usize = 1 << 27;
 
-/// Evaluations of bodies of binding forms in one sheet: some minutes of work.
-pub(super) const BODY_EVALUATIONS: u64 = 50_000_000_000;
+/// Evaluations of bodies of binding forms in one sheet: half a minute of work,
+/// and a thousand for each of a million rows.
+pub(super) const BODY_EVALUATIONS: u64 = 2_000_000_000;
 
 /// Binding forms within binding forms.
 pub(super) const NESTED_FORMS: usize = 16;

@@ -220,7 +220,7 @@ pub(super) const PAGES: &[CodePage] = &[
         "rebinds-library-name",
         "A name of the library is bound anew.",
         "From here on it means your value; what the library computes is not affected.",
-        "c = 3\nresult y = 2 * c",
+        "k_B = 3\nresult y = 2 * k_B",
         "k = 3\nresult y = 2 * k",
     ),
     page(
