@@ -1,5 +1,6 @@
 //! The harness of the test suites. Tests speak the language: a sheet, and what
-//! is to be said of it. Only [`subject`] calls the crates under test.
+//! is to be said of it. Only [`subject`] and [`compiled`] call
+//! the crates under test.
 //!
 //! ```text
 //!   sheets/**/*.zij      fixture     what is wrong, where, with which repair
@@ -7,6 +8,7 @@
 //!   published/*.toml     published   a value, against a paper or a standard
 //! ```
 
+pub mod compiled;
 pub mod exchange;
 pub mod fixture;
 pub mod generate;
