@@ -365,7 +365,7 @@ pub(super) const PAGES: &[CodePage] = &[
         "not-yet",
         "What is written here is part of the language and cannot be computed yet.",
         "It is refused with its place, and never misread.",
-        "explain 1 + 2",
-        "1 + 2",
+        "figure x = 0 .. 1 in 10 steps: x^2",
+        "table x = 0 .. 1 in 10 steps: x^2",
     ),
 ];
