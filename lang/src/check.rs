@@ -59,6 +59,10 @@ pub enum Note {
     SettledH(Exponent),
     /// `[cm via c]`: the value to the power ±1 times powers of the constants.
     Bridge(i32, Vec<Exponent>),
+    /// `[mag via f_AB]`: the flux in magnitudes from that zero point.
+    ToMagnitude,
+    /// `[Jy via f_AB]`: what is so many magnitudes from that zero point.
+    FromMagnitude,
     /// A bare number that takes the unit written after another.
     Unit(Arc<Measure>),
 }

@@ -15,6 +15,8 @@
 mod binding;
 mod expression;
 mod model;
+#[cfg(test)]
+mod tests;
 
 pub use model::DEFAULT_MODEL;
 

@@ -211,6 +211,9 @@ impl Checker {
         {
             return self.wrong(error::open_bridge(it.value.span));
         }
+        if let Some(typed) = self.by_zero_point(it, &constants, &settled) {
+            return typed;
+        }
         let (value, target) = (bare(&settled), bare(&it.measure.form));
         let ways = ways_across(&value, &target, &constants);
         match ways.as_slice() {
@@ -234,6 +237,25 @@ impl Checker {
             }
             _ => self.wrong(error::many_bridges(it.bracket.span, names)),
         }
+    }
+
+    /// A flux and a magnitude with one zero point between them: Pogson's
+    /// relation instead of a product of powers.
+    fn by_zero_point(&mut self, it: &Bracketed<'_>, constants: &[Form], settled: &Form) -> Option<Typed> {
+        let [zero] = constants else { return None };
+        let magnitude = Form::of(MAGNITUDE);
+        let (value, target) = (bare(settled), bare(&it.measure.form));
+        let is_written = self.unifier.could_be(&it.typed.form, &magnitude);
+        let note = if target == magnitude && value == *zero {
+            Note::ToMagnitude
+        } else if target == *zero && is_written && !zero.is_number() {
+            Note::FromMagnitude
+        } else {
+            return None;
+        };
+        self.note(it.bracket.span, note);
+        let form = self.with_open_angle(it.measure.form.clone());
+        Some(Typed::quantity(form).shown_in(Some(Arc::clone(&it.measure))))
     }
 
     pub(super) fn is_any(&self, key: Key) -> bool {

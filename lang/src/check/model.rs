@@ -10,6 +10,9 @@ use crate::ast::{self, Setting};
 use std::sync::Arc;
 use zij_stdlib::model::{self, BASES, Base, PARAMETERS, Parameter, ParameterId, Takes};
 
+/// 100 km/s/Mpc in 1/s, of which h is the multiple.
+const HUNDRED: f64 = 100.0 * zij_stdlib::constants::values::KM_PER_S_PER_MPC;
+
 /// What a model written in the sheet starts from and gives.
 #[derive(Clone)]
 pub(super) struct Found {
@@ -167,6 +170,22 @@ impl Checker {
         let typed = self.infer_quantity(&setting.value);
         self.locals.pop();
         typed
+    }
+
+    /// The h of the model assumed, as far as it is written: for telling how
+    /// much it matters.
+    pub(super) fn assumed_h(&self) -> f64 {
+        let assumed = self.environment.assumed.as_ref();
+        let is_rate = |name: &str| parameter(name).is_some_and(|(_, parameter)| parameter.name == "H0");
+        let given = assumed.and_then(|model| {
+            let setting = model.written.settings.iter().find(|setting| is_rate(&setting.name.node))?;
+            let written = super::claim::written(&setting.value)?;
+            Some(written.number.value * written.unit.map_or(1.0, |unit| self.size_of(unit)))
+        });
+        let base = assumed.map_or_else(|| base(crate::lower::DEFAULT_MODEL), |model| Some(model.base));
+        let listed = base.and_then(|base| base.parameters.iter().find(|(name, ..)| *name == "H0"));
+        let rate = given.or(listed.map(|(_, rate, _)| *rate));
+        rate.map_or(0.7, |rate| rate / HUNDRED)
     }
 
     /// `model NAME = MODEL`

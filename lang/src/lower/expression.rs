@@ -482,11 +482,46 @@ impl Lowering<'_> {
                 let h = self.lower(h);
                 self.times_power(node, h, power, bracket.span)
             }
+            (Some(Conversion::Via(names)), Some(Note::ToMagnitude)) => {
+                let zero = self.via(&names[0]);
+                self.to_magnitude(node, zero, bracket.span)
+            }
+            (Some(Conversion::Via(names)), Some(Note::FromMagnitude)) => {
+                let zero = self.via(&names[0]);
+                self.from_magnitude(node, zero, bracket.span)
+            }
             (Some(Conversion::Via(names)), Some(Note::Bridge(sign, powers))) => {
                 self.cross(node, sign, names, &powers, bracket.span)
             }
             (Some(Conversion::Today(_) | Conversion::ByHand(_)) | None, _) | (Some(_), _) => node,
         }
+    }
+
+    /// A constant of a bridge: the library's, or else a value of the sheet.
+    fn via(&mut self, name: &Name) -> NodeId {
+        match library::value(&name.node) {
+            Some(entry) => self.entry_value(entry, name.span),
+            None => self.lower_name(&name.node, name.span),
+        }
+    }
+
+    /// `-2.5 log10(flux/zero)`: Pogson 1856, MNRAS 17, 12.
+    fn to_magnitude(&mut self, flux: NodeId, zero: NodeId, span: Span) -> NodeId {
+        let ratio = self.emit(Op::Binary(BinaryOp::Divide, flux, zero), span);
+        let Some(entry) = library::function("log10") else {
+            return self.missing(span);
+        };
+        let log = self.emit(Op::Call(entry, None, vec![ratio]), span);
+        let factor = self.constant(-2.5, span);
+        self.emit(Op::Binary(BinaryOp::Multiply, factor, log), span)
+    }
+
+    /// `zero 10^(-0.4 m)`
+    fn from_magnitude(&mut self, magnitude: NodeId, zero: NodeId, span: Span) -> NodeId {
+        let (ten, factor) = (self.constant(10.0, span), self.constant(-0.4, span));
+        let exponent = self.emit(Op::Binary(BinaryOp::Multiply, factor, magnitude), span);
+        let ratio = self.emit(Op::Binary(BinaryOp::Power, ten, exponent), span);
+        self.emit(Op::Binary(BinaryOp::Multiply, zero, ratio), span)
     }
 
     fn cross(
@@ -497,13 +532,7 @@ impl Lowering<'_> {
         powers: &[Ratio<i32>],
         span: Span,
     ) -> NodeId {
-        let mut constants = Vec::new();
-        for name in names {
-            constants.push(match library::value(&name.node) {
-                Some(entry) => self.entry_value(entry, name.span),
-                None => self.lower_name(&name.node, name.span),
-            });
-        }
+        let constants: Vec<NodeId> = names.iter().map(|name| self.via(name)).collect();
         let mut product = self.raise(node, Ratio::new_raw(sign, 1), span);
         for (constant, power) in constants.into_iter().zip(powers) {
             product = self.times_power(product, constant, *power, span);

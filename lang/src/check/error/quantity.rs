@@ -145,7 +145,7 @@ impl Checker {
                 error
             }
             Difference::LittleH => {
-                error = error.note("they differ by a power of h: at h = 0.7, by 30% for each");
+                error = error.note(self.h_note());
                 for (side, other) in [(left, right), (right, left)] {
                     error = self.h_repair(error, side, &other.1.form, Wrap::Operand);
                 }
@@ -165,6 +165,13 @@ impl Checker {
             }
             Difference::Dimension => self.constant_repair(error, left, right),
         }
+    }
+
+    /// How much a power of h is, in the model assumed.
+    fn h_note(&self) -> String {
+        let h = self.assumed_h();
+        let percent = (100.0 * (1.0 - h)).round();
+        format!("they differ by a power of h: in the model assumed h = {}, so by {percent}% for each", crate::eval::plain_number(h))
     }
 
     /// `a + b` of unlike sides.
