@@ -7,7 +7,7 @@ use std::path::{Path, PathBuf};
 use std::process::{Command, Output, Stdio};
 use std::sync::OnceLock;
 use tempfile::TempDir;
-use zij_tests::{repository, subject};
+use zij_tests::repository;
 
 /// The program, built once with the profile of these tests.
 fn zij() -> Command {
