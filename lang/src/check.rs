@@ -108,8 +108,11 @@ pub struct Checker {
     imported: Vec<SmolStr>,
     including: Vec<SmolStr>,
     /// Where a sheet binds its names, once a mistake made it matter.
-    later: Option<(u16, FxHashMap<(bool, SmolStr), Span>)>,
+    later: Option<(u16, BoundNames)>,
 }
+
+/// Functions (true) and values (false) of a sheet, and where they are bound.
+type BoundNames = FxHashMap<(bool, SmolStr), Span>;
 
 /// A parameter, a bound variable or a `where` name.
 #[derive(Clone)]
@@ -233,7 +236,11 @@ impl Checker {
     pub fn unit_of(&self, form: &Form, unit: Option<&Arc<Measure>>) -> (String, f64) {
         let form = self.settled(form);
         if let Some(measure) = unit.filter(|measure| is_unit_for(measure, &form)) {
-            let text = if measure.text == "1" { "" } else { measure.text.as_str() };
+            let text = if measure.text == "1" {
+                ""
+            } else {
+                measure.text.as_str()
+            };
             return (text.to_owned(), measure.factor);
         }
         let text = self.unit_text(&without_open_angle(form));

@@ -15,8 +15,6 @@
 mod binding;
 mod expression;
 mod model;
-#[cfg(test)]
-mod tests;
 
 pub use model::DEFAULT_MODEL;
 
@@ -72,6 +70,17 @@ struct Scope {
     blame: Option<(u16, Span)>,
     /// The table whose columns stand bare, inside `only`.
     table: Option<BindingId>,
+}
+
+/// A sheet ready to be evaluated, but for its data.
+pub struct Lowered {
+    /// The program.
+    pub program: Program,
+    /// The columns it needs, in the order of their numbers: the table and the
+    /// place in it.
+    pub columns: Vec<(BindingId, usize)>,
+    /// Where it grew too large, if it did.
+    pub too_large: Option<(u16, Span)>,
 }
 
 /// The translation of a checked sheet.
@@ -172,19 +181,18 @@ impl<'c> Lowering<'c> {
         })
     }
 
-    /// The program, the columns it needs in the order of their numbers, and
-    /// where it grew too large, if it did.
+    /// What has been lowered.
     #[must_use]
-    pub fn finish(mut self) -> (Program, Vec<(BindingId, usize)>, Option<(u16, Span)>) {
+    pub fn finish(mut self) -> Lowered {
         let main = self.builders.swap_remove(0);
         self.program.main = main.block;
         let mut columns: Vec<((BindingId, usize), u32)> = self.columns.into_iter().collect();
         columns.sort_by_key(|(_, number)| *number);
-        (
-            self.program,
-            columns.into_iter().map(|(column, _)| column).collect(),
-            self.too_large,
-        )
+        Lowered {
+            program: self.program,
+            columns: columns.into_iter().map(|(column, _)| column).collect(),
+            too_large: self.too_large,
+        }
     }
 
     fn within<T>(&mut self, limit: BindingId, source: u16, work: impl FnOnce(&mut Self) -> T) -> T {

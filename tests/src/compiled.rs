@@ -36,7 +36,7 @@ pub fn compiled(sheet: &str) -> String {
             lowering.output(&show.output, show.place.source);
         }
     }
-    let (program, _, _) = lowering.finish();
+    let program = lowering.finish().program;
     let mut text = String::new();
     for body in &program.bodies {
         listed(&mut text, body);

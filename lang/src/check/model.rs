@@ -178,7 +178,11 @@ impl Checker {
         let assumed = self.environment.assumed.as_ref();
         let is_rate = |name: &str| parameter(name).is_some_and(|(_, parameter)| parameter.name == "H0");
         let given = assumed.and_then(|model| {
-            let setting = model.written.settings.iter().find(|setting| is_rate(&setting.name.node))?;
+            let setting = model
+                .written
+                .settings
+                .iter()
+                .find(|setting| is_rate(&setting.name.node))?;
             let written = super::claim::written(&setting.value)?;
             Some(written.number.value * written.unit.map_or(1.0, |unit| self.size_of(unit)))
         });

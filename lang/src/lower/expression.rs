@@ -484,11 +484,11 @@ impl Lowering<'_> {
             }
             (Some(Conversion::Via(names)), Some(Note::ToMagnitude)) => {
                 let zero = self.via(&names[0]);
-                self.to_magnitude(node, zero, bracket.span)
+                self.magnitude_of(node, zero, bracket.span)
             }
             (Some(Conversion::Via(names)), Some(Note::FromMagnitude)) => {
                 let zero = self.via(&names[0]);
-                self.from_magnitude(node, zero, bracket.span)
+                self.flux_of(node, zero, bracket.span)
             }
             (Some(Conversion::Via(names)), Some(Note::Bridge(sign, powers))) => {
                 self.cross(node, sign, names, &powers, bracket.span)
@@ -506,7 +506,7 @@ impl Lowering<'_> {
     }
 
     /// `-2.5 log10(flux/zero)`: Pogson 1856, MNRAS 17, 12.
-    fn to_magnitude(&mut self, flux: NodeId, zero: NodeId, span: Span) -> NodeId {
+    fn magnitude_of(&mut self, flux: NodeId, zero: NodeId, span: Span) -> NodeId {
         let ratio = self.emit(Op::Binary(BinaryOp::Divide, flux, zero), span);
         let Some(entry) = library::function("log10") else {
             return self.missing(span);
@@ -517,7 +517,7 @@ impl Lowering<'_> {
     }
 
     /// `zero 10^(-0.4 m)`
-    fn from_magnitude(&mut self, magnitude: NodeId, zero: NodeId, span: Span) -> NodeId {
+    fn flux_of(&mut self, magnitude: NodeId, zero: NodeId, span: Span) -> NodeId {
         let (ten, factor) = (self.constant(10.0, span), self.constant(-0.4, span));
         let exponent = self.emit(Op::Binary(BinaryOp::Multiply, factor, magnitude), span);
         let ratio = self.emit(Op::Binary(BinaryOp::Power, ten, exponent), span);

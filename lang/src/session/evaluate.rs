@@ -10,7 +10,7 @@ use crate::claim::{self, Allowance};
 use crate::data::{self, Data};
 use crate::diagnostic::Diagnostic;
 use crate::eval::{Evaluator, Fault, Value};
-use crate::lower::{DEFAULT_MODEL, Lowering};
+use crate::lower::{DEFAULT_MODEL, Lowered, Lowering};
 use crate::program::{NodeId, Program};
 use crate::report::{
     ClaimReport, Frame, Item, ModelReport, Numbers, Report, Shown, TableColumn, TableReport,
@@ -29,7 +29,11 @@ pub(super) fn evaluate(checker: &Checker, files: &dyn Files, report: &mut Report
         .map(|task| lower_task(&mut lowering, task))
         .collect();
     let model = lowering.model();
-    let (mut program, columns, too_large) = lowering.finish();
+    let Lowered {
+        mut program,
+        columns,
+        too_large,
+    } = lowering.finish();
     if let Some((source, span)) = too_large {
         let error = Diagnostic::error(
             "too-large",
@@ -42,7 +46,7 @@ pub(super) fn evaluate(checker: &Checker, files: &dyn Files, report: &mut Report
         return;
     }
     if let Err(error) = fill_columns(checker, files, &columns, &mut program) {
-        report.diagnostics.push(error);
+        report.diagnostics.push(*error);
         return;
     }
     report.evaluated = true;
@@ -104,7 +108,7 @@ fn fill_columns(
     files: &dyn Files,
     columns: &[(BindingId, usize)],
     program: &mut Program,
-) -> Result<(), (usize, Diagnostic)> {
+) -> Result<(), Box<(usize, Diagnostic)>> {
     let mut read: FxHashMap<BindingId, Data> = FxHashMap::default();
     for (id, place) in columns {
         let binding = checker.environment.binding(*id);
@@ -114,7 +118,7 @@ fn fill_columns(
         let path = table.path.as_str();
         let wrong = |reason: String| {
             let error = Diagnostic::error("bad-data", reason, table.read.path.span, "read here");
-            (usize::from(binding.place.source), error)
+            Box::new((usize::from(binding.place.source), error))
         };
         if !read.contains_key(id) {
             let data = files

@@ -2,10 +2,9 @@
 
 use crate::ast::{Name, StatementKind};
 use crate::check::model::{base, parameter};
-use crate::check::{Checker, call, library};
+use crate::check::{BoundNames, Checker, call, library};
 use crate::diagnostic::Diagnostic;
 use crate::source::Span;
-use rustc_hash::FxHashMap;
 use smol_str::SmolStr;
 use zij_stdlib::model::PARAMETERS;
 use zij_stdlib::units;
@@ -283,7 +282,7 @@ impl Checker {
     }
 }
 
-fn names_bound(text: &str) -> FxHashMap<(bool, SmolStr), Span> {
+fn names_bound(text: &str) -> BoundNames {
     let names = crate::parser::parse(text)
         .statements
         .into_iter()

@@ -171,7 +171,10 @@ impl Checker {
     fn h_note(&self) -> String {
         let h = self.assumed_h();
         let percent = (100.0 * (1.0 - h)).round();
-        format!("they differ by a power of h: in the model assumed h = {}, so by {percent}% for each", crate::eval::plain_number(h))
+        format!(
+            "they differ by a power of h: in the model assumed h = {}, so by {percent}% for each",
+            crate::eval::plain_number(h)
+        )
     }
 
     /// `a + b` of unlike sides.
@@ -333,14 +336,14 @@ impl Checker {
             Difference::Frame => {
                 let z = self.redshift_near(&[it.value]);
                 error = error.note("a plain bracket changes the unit shown, never the frame");
-                if let Some(z) = z {
-                    error = error.fix(
+                match z {
+                    Some(z) => error.fix(
                         format!("take it along to redshift {z}"),
                         inside,
                         format!(" at {z}"),
-                    );
+                    ),
+                    None => error.fix("take it as of today", inside, " today"),
                 }
-                error.fix("take it as of today", inside, " today")
             }
             Difference::LittleH => error
                 .note("a plain bracket changes the unit shown, and h is more than a unit")
@@ -670,23 +673,7 @@ fn log_repair(error: Diagnostic, expr: &Expr) -> Diagnostic {
 /// one of a redshift.
 fn argument_z(expr: &Expr) -> Option<Span> {
     match &expr.kind {
-        ExprKind::Call(name, arguments) => {
-            let takes_z = library::function(&name.node).is_some_and(|entry| {
-                entry
-                    .arguments
-                    .first()
-                    .is_some_and(|argument| argument.name == "z")
-            });
-            arguments
-                .iter()
-                .enumerate()
-                .find_map(|(place, argument)| match argument {
-                    Argument::Positional(value) if takes_z && place == 0 => Some(value.span),
-                    Argument::Positional(value) => argument_z(value),
-                    Argument::Named(word, value) => (word.node == "z").then_some(value.span),
-                    Argument::Equation(left, right) => argument_z(left).or_else(|| argument_z(right)),
-                })
-        }
+        ExprKind::Call(name, arguments) => redshift_argument(&name.node, arguments),
         ExprKind::Group(inner)
         | ExprKind::Unary(_, inner)
         | ExprKind::Express(inner, _)
@@ -694,4 +681,30 @@ fn argument_z(expr: &Expr) -> Option<Span> {
         ExprKind::Binary(_, left, right) => argument_z(left).or_else(|| argument_z(right)),
         _ => None,
     }
+}
+
+/// The last argument that is a redshift: the epoch of the result, as of a
+/// distance from one redshift to another.
+fn redshift_argument(name: &str, arguments: &[Argument]) -> Option<Span> {
+    let parameters = library::function(name).map_or(&[][..], |entry| entry.arguments);
+    let is_redshift = |place: usize| {
+        parameters
+            .get(place)
+            .is_some_and(|parameter| parameter.name.starts_with('z'))
+    };
+    let own = arguments
+        .iter()
+        .enumerate()
+        .rev()
+        .find_map(|(place, argument)| match argument {
+            Argument::Positional(value) => is_redshift(place).then_some(value.span),
+            Argument::Named(word, value) => word.node.starts_with('z').then_some(value.span),
+            Argument::Equation(..) => None,
+        });
+    own.or_else(|| {
+        arguments.iter().find_map(|argument| match argument {
+            Argument::Positional(value) | Argument::Named(_, value) => argument_z(value),
+            Argument::Equation(left, right) => argument_z(left).or_else(|| argument_z(right)),
+        })
+    })
 }
