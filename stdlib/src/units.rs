@@ -180,7 +180,7 @@ pub fn counting(spelling: &str) -> bool {
 
 impl Unit {
     /// Whether the unit names a length, so that the frame of a literal in it
-    /// is open unless the unit is [`framed`](Unit::framed).
+    /// is open unless the unit is `framed`.
     #[must_use]
     pub fn names_length(&self) -> bool {
         self.dimension.with(Generator::Comoving, 0) == LENGTH
