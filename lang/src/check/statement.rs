@@ -250,7 +250,8 @@ impl Checker {
 
     fn scheme(&mut self, typed: Typed, binds: impl Fn(Sort) -> bool) -> Scheme {
         let mut generaliser = Generaliser::default();
-        let form = generaliser.bind(&mut self.unifier, &typed.form, binds);
+        let form = self.unifier.gathered(&typed.form);
+        let form = generaliser.bind(&mut self.unifier, &form, binds);
         Scheme {
             typed: Typed { form, ..typed },
             bound: generaliser.sorts(&self.unifier),
@@ -482,11 +483,14 @@ impl Checker {
         let outer = self.locals.len();
         let typed = self.infer_with_wheres(&value, &wheres);
         self.end_wheres(outer);
-        if self.at_prompt && !typed.is_unknown() {
-            self.bind_that(&value, &wheres, &typed);
+        if typed.is_unknown() {
+            return;
         }
-        if !typed.is_unknown() {
-            self.show_expression(value, wheres, typed, (false, None));
+        // What is shown may speak of `that`, and means the one before.
+        let that = self.at_prompt.then(|| (value.clone(), wheres.clone(), typed.clone()));
+        self.show_expression(value, wheres, typed, (false, None));
+        if let Some((value, wheres, typed)) = that {
+            self.bind_that(&value, &wheres, &typed);
         }
     }
 

@@ -132,6 +132,32 @@ impl Unifier {
         }
     }
 
+    /// The form of a value that is about to be generalised, with one unknown
+    /// along each generator: several that nothing else rests on can be no more
+    /// than one can. Otherwise `y = x * x / x` would have three times those of
+    /// `x`, and a chain of such names more than can be counted.
+    #[must_use]
+    pub fn gathered(&self, form: &Form) -> Form {
+        let form = self.resolve(form);
+        if !form.is_open() {
+            return form;
+        }
+        let free = |key: Key| {
+            let local = key >= FIRST_UNKNOWN && self.is_local(key);
+            local.then(|| self.sort(key)).filter(|sort| matches!(sort, Sort::Along(_)))
+        };
+        let mut seen: Vec<Sort> = Vec::new();
+        let mut surplus: Vec<Key> = Vec::new();
+        for key in form.unknowns() {
+            match free(key) {
+                Some(sort) if seen.contains(&sort) => surplus.push(key),
+                Some(sort) => seen.push(sort),
+                None => {}
+            }
+        }
+        form.without(|key| surplus.contains(&key))
+    }
+
     /// Makes `a` and `b` the same, if they can be.
     ///
     /// # Errors
