@@ -151,7 +151,7 @@ impl Model {
         let history = self.history()?;
         history.admit(z.stretch())?;
         let track = history.track(self.expansion(), kind)?;
-        Ok(track.before_today(self.expansion(), z.get()))
+        finite(track.before_today(self.expansion(), z.get()))
     }
 
     /// An integral from the big bang to z.

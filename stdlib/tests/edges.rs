@@ -11,6 +11,7 @@ use zij_stdlib::constants::values as si;
 use zij_stdlib::cosmology::{Found, Length, Redshift, Time};
 use zij_stdlib::model::parameters::named;
 use zij_stdlib::model::{self, BASES, Model, Setting};
+use zij_stdlib::numerics::quadrature::adaptive;
 
 fn km_s_mpc(value: f64) -> f64 {
     value * si::KM_PER_S_PER_MPC
@@ -658,4 +659,105 @@ fn no_model_panics_hangs_or_returns_nonsense() {
             }
         }
     }
+}
+
+/// `∫₀ᵉ f` in parts that grow outward: with w = −1000 the dark energy is gone
+/// within a thousandth of today.
+fn in_parts(end: f64, f: impl Fn(f64) -> f64) -> f64 {
+    let ends = [0.0, 1e-4, 1e-3, 1e-2, 0.1, 1.0].map(|share| share * end);
+    ends.windows(2)
+        .map(|part| adaptive(part[0], part[1], 1e-13, &f))
+        .sum()
+}
+
+/// Distances and times of a model against quadrature without tables.
+fn agrees_with_plain_quadrature(model: &Model) {
+    for redshift in [-0.2, 0.1, 2.0, 300.0] {
+        let (Ok(distance), Ok(passed)) = (
+            model.comoving_distance(z(redshift)),
+            model.lookback_time(z(redshift)),
+        ) else {
+            continue;
+        };
+        let unit = model.hubble_distance(Redshift::TODAY).expect("c/H0").value;
+        let end = libm::log1p(redshift);
+        let rate = |x: f64| model.expansion().rate(libm::exp(x));
+        let chi = in_parts(end, |x| libm::exp(x) / rate(x));
+        let elapsed = in_parts(end, |x| 1.0 / rate(x));
+        // A model that nearly stops loses digits in E² itself.
+        near(distance.value / unit, chi, 1e-8);
+        near(passed.value / model.hubble_time().value, elapsed, 1e-8);
+        if let (Ok(then), Ok(now)) = (model.age(z(redshift)), model.age(Redshift::TODAY)) {
+            near((then + passed).value, now.value, 1e-8);
+        }
+    }
+}
+
+/// A number between 0 and 1 from a linear congruential generator (Knuth 1997,
+/// The Art of Computer Programming 2, sec. 3.3.4).
+fn next(state: &mut u64) -> f64 {
+    *state = state
+        .wrapping_mul(6_364_136_223_846_793_005)
+        .wrapping_add(1_442_695_040_888_963_407);
+    (*state >> 11) as f64 / 9_007_199_254_740_992.0
+}
+
+/// A number of either sign over many orders of magnitude, or a plain one.
+fn wild(state: &mut u64) -> f64 {
+    let sign = if next(state) < 0.5 { -1.0 } else { 1.0 };
+    match (next(state) * 4.0) as u32 {
+        0 => 0.0,
+        1 => sign * libm::exp10(12.0 * next(state) - 8.0),
+        _ => sign * 3.0 * next(state),
+    }
+}
+
+#[test]
+fn models_drawn_at_random_do_not_panic_or_return_nonsense() {
+    let mut state = 42;
+    let rounds = 100;
+    let mut built = 0;
+    for round in 0..rounds {
+        let numbers = [
+            ("Ωm", wild(&mut state).abs()),
+            ("ΩΛ", wild(&mut state)),
+            ("w0", wild(&mut state)),
+            ("wa", wild(&mut state)),
+            ("T_CMB", 3.0 * wild(&mut state).abs()),
+            (
+                "H0",
+                km_s_mpc(70.0) * libm::exp10(wild(&mut state).clamp(-9.0, 9.0)),
+            ),
+        ];
+        let base = BASES.iter().find(|base| base.name == "general").expect("general");
+        let Ok(model) = model::build(base, &settings(&numbers)) else {
+            continue;
+        };
+        built += 1;
+        for entry in entries() {
+            let mut values = Vec::new();
+            match entry.definition {
+                Definition::ModelValue(value) => values.push(value(&model)),
+                Definition::Cosmology(function) => {
+                    for x in [-0.9, 1e-3, 2.0, 1e4, 1e17] {
+                        let arguments: Vec<f64> = (0..entry.arguments.len())
+                            .map(|place| x * (1 + place) as f64)
+                            .collect();
+                        values.push(function(&model, &arguments));
+                    }
+                }
+                Definition::Constant(..) | Definition::Function(_) => {}
+            }
+            for value in values {
+                let never = ["arrival_time", "arrival_wait"].contains(&entry.name);
+                let sound = value
+                    .as_ref()
+                    .is_ok_and(|x| x.is_finite() || (never && x.is_infinite()))
+                    || value.is_err();
+                assert!(sound, "round {round}, {} in {numbers:?}: {value:?}", entry.name);
+            }
+        }
+        agrees_with_plain_quadrature(&model);
+    }
+    assert!(built > rounds / 3, "only {built} were built");
 }

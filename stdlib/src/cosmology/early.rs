@@ -45,8 +45,8 @@ impl Model {
         if let Some(published) = self.quoted(id::Z_STAR) {
             return Redshift::new(published);
         }
-        self.fits().star.store(true, Ordering::Relaxed);
         let (matter, baryons) = self.plasma()?;
+        self.fits().star.store(true, Ordering::Relaxed);
         let first = 0.0783 * libm::pow(baryons, -0.238) / (1.0 + 39.5 * libm::pow(baryons, 0.763));
         let second = 0.560 / (1.0 + 21.1 * libm::pow(baryons, 1.81));
         let z =
@@ -63,8 +63,8 @@ impl Model {
         if let Some(published) = self.quoted(id::Z_DRAG) {
             return Redshift::new(published);
         }
-        self.fits().drag.store(true, Ordering::Relaxed);
         let (matter, baryons) = self.plasma()?;
+        self.fits().drag.store(true, Ordering::Relaxed);
         Redshift::new(finite(drag_fit(matter, baryons))?)
     }
 

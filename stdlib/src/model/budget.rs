@@ -10,6 +10,9 @@ use std::f64::consts::PI;
 /// Planck 2018 VI: three species heated a little by e⁺e⁻ annihilation
 /// (Mangano et al. 2005, Nucl. Phys. B 729, 221).
 pub const STANDARD_NEFF: f64 = 3.046;
+/// Parts of the budget larger than this would leave today's expansion rate,
+/// their sum, to rounding.
+const MOST: f64 = 4e6;
 /// A curvature smaller than this is rounding of the budget's sum.
 const ROUNDING: f64 = 4.0 * f64::EPSILON;
 
@@ -94,8 +97,20 @@ pub fn settle(parameters: &[(ParameterId, Setting)]) -> Result<Budget, ModelErro
     let photons = photon_density(t_cmb_k, h0_per_s);
     let neutrinos = Neutrinos::new(&values.masses(), t_cmb_k, neff, photons)?;
     let (cold, baryons) = matter(&values, h, neutrinos.matter)?;
-    let massive_all: f64 = neutrinos.massive.iter().map(|species| species.at(1.0)).sum();
+    let massive_all = neutrinos
+        .massive
+        .iter()
+        .map(|species| species.at(1.0))
+        .fold(0.0, |sum, one| sum + one);
     let filled = photons + neutrinos.massless + massive_all + cold;
+    if filled > MOST {
+        return Err(ModelError {
+            message: format!(
+                "matter and radiation would be {filled:.1e} times the critical density: is H0 meant so small?"
+            ),
+            parameter: Some(id::H0),
+        });
+    }
     let (dark, curvature) = close(&values, filled);
     if !(dark.is_finite() && curvature.is_finite()) {
         return Err(ModelError {
@@ -161,7 +176,7 @@ impl Neutrinos {
             .iter()
             .filter(|species| species.is_matter())
             .map(|species| species.at(1.0))
-            .sum();
+            .fold(0.0, |sum, one| sum + one);
         let massless = all * (3 - with_mass.len()) as f64 / 3.0;
         Ok(Neutrinos {
             massless,

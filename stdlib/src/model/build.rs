@@ -4,9 +4,13 @@
 use super::budget::{self, Budget};
 use super::parameters::{PARAMETERS, Subject, id, moves_recombination, named, subject};
 use super::{Base, Model, ModelError, ParameterId, Setting, Takes};
+use crate::constants::values::KM_PER_S_PER_MPC;
 
 /// Values of this size are taken for a slip of unit or of sign.
 const ABSURD: f64 = 1e6;
+
+/// Hubble constants that can be meant, in km/s/Mpc.
+const H0_RANGE: (f64, f64) = (1e-3, 1e6);
 
 /// What a base lets one change.
 #[derive(Clone, Copy, PartialEq, Eq)]
@@ -231,6 +235,13 @@ fn check_number(parameter: ParameterId, value: f64) -> Result<(), ModelError> {
             "H0 must be positive: zij describes models that expand today".to_owned(),
         )),
         id::SIGMA8 if value <= 0.0 => must_be("positive"),
+        id::H0 if !(H0_RANGE.0..=H0_RANGE.1).contains(&(value / KM_PER_S_PER_MPC)) => Err(error(
+            parameter,
+            format!(
+                "H0 is {:.1e} km/s/Mpc: is its unit meant?",
+                value / KM_PER_S_PER_MPC
+            ),
+        )),
         id::H0 => Ok(()),
         id::T_CMB if value < 0.0 => Err(error(parameter, "T_CMB must not be negative".to_owned())),
         id::OMEGA_M

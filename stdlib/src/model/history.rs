@@ -23,6 +23,8 @@ use std::sync::OnceLock;
 const TABLE: (f64, f64) = (1.0 / 16_777_216.0, 17_179_869_184.0);
 /// Ratio of the steps of the search for zeros of E²: 2^(1/16).
 const SEARCH_RATIO: f64 = 1.044_273_782_427_413_8;
+/// No zero of E² is looked for beyond this s or its inverse.
+const FAR: f64 = 1e60;
 /// A dip of E² this deep, relative to its terms, is searched for a zero.
 const DIP: f64 = 0.3;
 /// E² this far below its terms is zero: the model hovers there for ever.
@@ -100,10 +102,24 @@ impl History {
             Edge::Open
         };
         if expansion.may_vanish() {
-            if let Some(s) = zero(expansion, SEARCH_RATIO, upper.min(TABLE.1)) {
+            let ahead = |end: f64, ratio: f64, far: f64| {
+                let near = if ratio > 1.0 { TABLE.1 } else { TABLE.0 };
+                let first = zero(
+                    expansion,
+                    1.0,
+                    if ratio > 1.0 { end.min(near) } else { end.max(near) },
+                    ratio,
+                );
+                // Beyond the tables only one term is left to take over.
+                let goes_on = if ratio > 1.0 { end > near } else { end < near };
+                first.or_else(|| {
+                    goes_on.then(|| zero(expansion, near, far, if ratio > 1.0 { 2.0 } else { 0.5 }))?
+                })
+            };
+            if let Some(s) = ahead(upper, SEARCH_RATIO, FAR) {
                 past = Edge::Turn(s);
             }
-            if let Some(s) = zero(expansion, 1.0 / SEARCH_RATIO, lower.max(TABLE.0)) {
+            if let Some(s) = ahead(lower, 1.0 / SEARCH_RATIO, 1.0 / FAR) {
                 future = Edge::Turn(s);
             }
         }
@@ -167,11 +183,11 @@ impl History {
     }
 }
 
-/// The first zero of E² on the way from today to `end`, in steps of `ratio`.
-fn zero(expansion: &Expansion, ratio: f64, end: f64) -> Option<f64> {
+/// The first zero of E² on the way from `start` to `end`, in steps of `ratio`.
+fn zero(expansion: &Expansion, start: f64, end: f64, ratio: f64) -> Option<f64> {
     let beyond = |s: f64| if ratio > 1.0 { s > end } else { s < end };
-    let (mut before, mut here) = (1.0, 1.0);
-    let mut values = (f64::INFINITY, expansion.balance(1.0));
+    let (mut before, mut here) = (start, start);
+    let mut values = (f64::INFINITY, expansion.balance(start));
     while !beyond(here) {
         let next = here * ratio;
         let value = expansion.balance(next);
@@ -259,7 +275,7 @@ impl Track {
             Edge::Undefined(_) => None,
             Edge::Turn(end) => Some(self.near(expansion, end, upper, end)),
             Edge::Open if expansion.early_power() > self.critical_power() => {
-                Some(tail_above(upper, |s| self.kind.integrand(expansion, s)))
+                known(tail_above(upper, |s| self.kind.integrand(expansion, s)))
             }
             Edge::Open => None,
         }
@@ -270,7 +286,7 @@ impl Track {
             Edge::Undefined(_) => None,
             Edge::Turn(end) => Some(self.near(expansion, end, end, lower)),
             Edge::Open if expansion.late_power() < self.critical_power() => {
-                Some(tail_below(lower, |s| self.kind.integrand(expansion, s)))
+                known(tail_below(lower, |s| self.kind.integrand(expansion, s)))
             }
             Edge::Open => None,
         }
@@ -372,6 +388,11 @@ impl Track {
             }
         }
     }
+}
+
+/// A value unless it is not a number: an integral past what can be followed.
+fn known(value: f64) -> Option<f64> {
+    value.is_finite().then_some(value)
 }
 
 fn refusal(failure: Failure) -> DomainError {
