@@ -434,7 +434,7 @@ unused = 2
     assert_eq!(value["claims"][0]["verdict"], "disagrees");
     assert_eq!(keys(&value["tables"][0]), ["columns", "rows"]);
     assert_eq!(keys(&value["tables"][0]["columns"][1]), ["name", "unit"]);
-    assert_eq!(value["tables"][0]["rows"][2], serde_json::json!([1.0, 1.0, 2.0]));
+    assert_eq!(value["tables"][0]["rows"][2], serde_json::json!([1.0, 2.0]));
     assert_eq!(value["warnings"][0]["code"], "unused-value");
     assert_eq!(value["errors"], serde_json::json!([]));
 }
