@@ -140,6 +140,19 @@ impl Terminal {
         });
     }
 
+    /// Clears the line and waits for the next prompt: what is typed before it
+    /// is there goes with the line.
+    #[track_caller]
+    fn interrupt(&mut self) {
+        let prompts = |screen: &str| screen.matches('∴').count();
+        self.wait("a prompt", |screen| {
+            screen.lines().last().is_some_and(|line| line.contains('∴'))
+        });
+        let before = prompts(&self.text());
+        self.press(CTRL_C);
+        self.wait("another prompt", |screen| prompts(screen) > before);
+    }
+
     /// Waits for the end, and its status.
     #[track_caller]
     fn status(&mut self) -> u32 {
@@ -153,7 +166,10 @@ impl Terminal {
         }
     }
 
+    #[track_caller]
     fn leave(mut self) -> TempDir {
+        // Between two prompts the terminal itself would take the key.
+        self.is_ready();
         self.press(CTRL_D);
         assert_eq!(self.status(), 0);
         self.home
@@ -452,7 +468,7 @@ fn no_key_and_no_byte_brings_it_down() {
     for byte in harmless {
         terminal.press(&char::from(byte).to_string());
     }
-    terminal.press(CTRL_C);
+    terminal.interrupt();
     for sequence in [
         "\x1b[9999~",
         "\x1b[200~\x1b[201~",
@@ -461,10 +477,11 @@ fn no_key_and_no_byte_brings_it_down() {
         "é∞Ω🌌\u{200d}\u{202e}",
     ] {
         terminal.press(sequence);
-        terminal.press(CTRL_C);
+        terminal.interrupt();
     }
-    terminal.keys.write_all(b"\xFF\xC0x\r").expect("bytes are taken");
-    terminal.press(CTRL_C);
+    terminal.keys.write_all(b"\xFF\xC0x").expect("bytes are taken");
+    terminal.sees("not UTF-8");
+    terminal.interrupt();
     terminal.enter("1 + 41");
     terminal.sees("= 42");
     terminal.leave();
