@@ -487,7 +487,9 @@ impl Checker {
             return;
         }
         // What is shown may speak of `that`, and means the one before.
-        let that = self.at_prompt.then(|| (value.clone(), wheres.clone(), typed.clone()));
+        let that = self
+            .at_prompt
+            .then(|| (value.clone(), wheres.clone(), typed.clone()));
         self.show_expression(value, wheres, typed, (false, None));
         if let Some((value, wheres, typed)) = that {
             self.bind_that(&value, &wheres, &typed);

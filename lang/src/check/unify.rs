@@ -144,7 +144,9 @@ impl Unifier {
         }
         let free = |key: Key| {
             let local = key >= FIRST_UNKNOWN && self.is_local(key);
-            local.then(|| self.sort(key)).filter(|sort| matches!(sort, Sort::Along(_)))
+            local
+                .then(|| self.sort(key))
+                .filter(|sort| matches!(sort, Sort::Along(_)))
         };
         let mut seen: Vec<Sort> = Vec::new();
         let mut surplus: Vec<Key> = Vec::new();

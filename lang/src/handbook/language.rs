@@ -480,6 +480,8 @@ pub(super) fn find(name: &str) -> impl Iterator<Item = &'static LanguagePage> + 
 mod tests {
     use super::*;
     use crate::parser::parse;
+    use crate::session::{NoFiles, Session};
+    use crate::source::Source;
     use crate::token::{TokenKind, lex};
 
     #[test]
@@ -487,6 +489,18 @@ mod tests {
         let complaint = |page: &LanguagePage| {
             let found = parse(page.example).diagnostics;
             (!found.is_empty()).then(|| (page.example, found[0].message.clone()))
+        };
+        let failures: Vec<_> = PAGES.iter().filter_map(complaint).collect();
+        assert_eq!(failures, []);
+    }
+
+    #[test]
+    fn every_example_runs() {
+        let complaint = |page: &LanguagePage| {
+            let mut session = Session::new(Box::new(NoFiles));
+            let report = session.run(&Source::new("example", page.example));
+            let found = report.diagnostics.into_iter().find(|(_, one)| one.is_error());
+            found.map(|(_, one)| (page.example, one.message))
         };
         let failures: Vec<_> = PAGES.iter().filter_map(complaint).collect();
         assert_eq!(failures, []);
