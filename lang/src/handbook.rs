@@ -161,6 +161,17 @@ const TOPICS: [(Topic, &str, &str); 9] = [
     ),
 ];
 
+/// Chapters that are lists of other things than functions and values.
+const LISTS: [(&str, &str); 4] = [
+    ("units", "units by what they measure"),
+    ("models", "published sets of parameters, textbook models"),
+    ("parameters", "what `with` may set in a model"),
+    (
+        "messages",
+        "the code of every message, with a sheet that gets it and its repair",
+    ),
+];
+
 fn set_overview(setter: &mut Setter) {
     setter.head("The handbook of zij", "");
     setter.paragraph(
@@ -175,17 +186,9 @@ fn set_overview(setter: &mut Setter) {
     let filled = TOPICS
         .iter()
         .filter(|(topic, ..)| entry::items().any(|item| item.topic == *topic));
-    let rows: Vec<_> = filled.map(|(_, name, about)| (*name, *about)).collect();
+    let chapters = filled.map(|(_, name, about)| (*name, *about));
+    let rows: Vec<_> = chapters.chain(LISTS).collect();
     setter.rows(&rows);
-    setter.rows(&[
-        ("units", "units by what they measure"),
-        ("models", "published sets of parameters, textbook models"),
-        ("parameters", "what `with` may set in a model"),
-        (
-            "messages",
-            "the code of every message, with a sheet that gets it and its repair",
-        ),
-    ]);
     setter.gap();
     setter.head("Start here", "");
     for line in [

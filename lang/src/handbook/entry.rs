@@ -147,7 +147,7 @@ fn signature(entry: &Entry, shown: &str) -> String {
     if !entry.is_function() {
         return format!("{shown}{unit}");
     }
-    let arguments: Vec<_> = entry.arguments.iter().map(parameter).collect();
+    let arguments: Vec<_> = entry.arguments.iter().map(with_default).collect();
     format!("{shown}({}){unit}", arguments.join(", "))
 }
 
@@ -158,8 +158,10 @@ fn usual_unit(entry: &Entry) -> &'static str {
     framed.unwrap_or(entry.usual_unit)
 }
 
-fn parameter(argument: &Argument) -> String {
+fn with_default(argument: &Argument) -> String {
     match argument.default {
+        // It may be left out, and has no value then.
+        Some(default) if default.is_nan() => format!("{} = …", argument.name),
         None => argument.name.into(),
         Some(default) => format!("{} = {}", argument.name, in_usual_unit(default, &argument.kind)),
     }
@@ -217,7 +219,9 @@ fn value(entry: &Entry) -> String {
 
 /// A number in SI, in the unit a cosmologist would use.
 fn in_usual_unit(value: f64, kind: &Type) -> String {
-    let unit = words::usual_unit(&kind.dimension).unwrap_or("");
+    let unit = words::usual_unit(&kind.dimension)
+        .filter(|unit| *unit != "1")
+        .unwrap_or("");
     match factor(unit) {
         _ if value == 0.0 || value.is_infinite() => concise(value, 0.0),
         Some(factor) => format!("{} {unit}", concise(value / factor, 0.0))
@@ -379,22 +383,37 @@ pub(super) fn set_base(setter: &mut Setter, base: &Base) {
     setter.head(base.name, "a model");
     setter.paragraph(base.about);
     setter.gap();
-    let row = |(name, value, uncertainty): &(&'static str, f64, f64)| {
-        (*name, parameter_value(name, *value, *uncertainty))
-    };
-    let rows: Vec<_> = base.parameters.iter().map(row).collect();
+    let mut rows: Vec<(&str, String)> = Vec::new();
+    for (name, ..) in base.parameters {
+        if rows.iter().all(|(known, _)| known != name) {
+            let about = parameter(name).map_or("", |parameter| parameter.about);
+            let value = listed(base, name).unwrap_or_default();
+            rows.push((name, format!("{value}: {about}")));
+        }
+    }
+    rows.push(("source", base.source.into()));
+    rows.push(("use", format!("assume {}", base.name)));
     setter.rows(&rows);
-    setter.rows(&[("source", base.source), ("use", &format!("assume {}", base.name))]);
 }
 
-/// A value of a parameter in its usual unit.
-fn parameter_value(name: &str, value: f64, uncertainty: f64) -> String {
-    let parameter = PARAMETERS.iter().find(|parameter| parameter.name == name);
-    let unit = parameter.map_or("", |parameter| parameter.usual_unit);
+/// The value of a parameter that a published set lists, in its usual unit.
+fn listed(base: &Base, name: &str) -> Option<String> {
+    let unit = parameter(name).map_or("", |parameter| parameter.usual_unit);
     let factor = factor(unit).unwrap_or(1.0);
-    let number = concise(value / factor, uncertainty / factor);
-    let about = parameter.map_or("", |parameter| parameter.about);
-    format!("{number} {unit}").trim_end().to_owned() + if about.is_empty() { "" } else { "   " } + about
+    let values = base.parameters.iter().filter(|(known, ..)| *known == name);
+    let numbers: Vec<_> = values
+        .map(|(_, value, uncertainty)| concise(value / factor, uncertainty / factor))
+        .collect();
+    let number = match numbers.as_slice() {
+        [] => return None,
+        [only] => only.clone(),
+        all => format!("{{{}}}", all.join(", ")),
+    };
+    Some(format!("{number} {unit}").trim_end().into())
+}
+
+fn parameter(name: &str) -> Option<&'static Parameter> {
+    PARAMETERS.iter().find(|parameter| parameter.name == name)
 }
 
 /// The page of a parameter of models.
@@ -411,17 +430,13 @@ pub(super) fn set_parameter(setter: &mut Setter, parameter: &Parameter) {
         Takes::List => format!("a list: {} for each", words::name(&parameter.dimension)),
         Takes::Function => "a function of z".into(),
     };
-    setter.rows(&[("takes", takes), ("also", parameter.aliases.join(", "))]);
-    let listed = BASES.iter().filter_map(|base| {
-        let (_, value, uncertainty) = base
-            .parameters
+    let mut rows = vec![("takes", takes), ("also", parameter.aliases.join(", "))];
+    rows.extend(
+        BASES
             .iter()
-            .find(|(name, ..)| *name == parameter.name)?;
-        let factor = factor(parameter.usual_unit).unwrap_or(1.0);
-        Some((base.name, concise(value / factor, uncertainty / factor)))
-    });
-    let listed: Vec<_> = listed.collect();
-    setter.rows(&listed);
+            .filter_map(|base| Some((base.name, listed(base, parameter.name)?))),
+    );
+    setter.rows(&rows);
 }
 
 /// Whether a model bears this name.

@@ -13,6 +13,9 @@ const MAX_LISTED: usize = 12;
 /// Pages listed at most below the one that was meant.
 const MAX_OTHERS: usize = 5;
 
+/// The score of a page that answers a question as it is put.
+const ANSWERED: usize = 1000;
+
 /// A score at which a page is meant: a synonym, or the name in other case.
 const CERTAIN: usize = 80;
 
@@ -76,6 +79,9 @@ pub(super) fn set(setter: &mut Setter, question: &str) -> Result<(), String> {
     let asked = question.to_lowercase();
     let words: Vec<&str> = words_of(&asked).collect();
     let mut found = candidates(&asked, &words);
+    if found.iter().any(|one| one.score > ANSWERED) {
+        found.retain(|one| one.score >= CERTAIN);
+    }
     found.sort_by_key(|one| std::cmp::Reverse(one.score));
     found.dedup_by(|one, other| one.name == other.name);
     let shown = look::harmless(&crate::output::one_line(question));
@@ -133,10 +139,10 @@ fn candidates(asked: &str, words: &[&str]) -> Vec<Found> {
         .filter(|(question, _)| asked.contains(question))
         .flat_map(|(_, names)| names.iter().copied())
         .collect();
-    let answered = |names: &[&str]| names.iter().any(|name| answers.contains(name));
+    let rank = |names: &[&str]| answers.iter().position(|answer| names.contains(answer));
     let score = |names: &[&str], synonyms: &[&str], about: &str| {
         let near = names.iter().map(|name| nearness(asked, name)).max().unwrap_or(0);
-        let bonus = if answered(names) { 100 } else { 0 };
+        let bonus = rank(names).map_or(0, |rank| ANSWERED + answers.len() - rank);
         bonus + near + matching(asked, words, names, synonyms, about)
     };
     let mut found = Vec::new();
@@ -229,5 +235,37 @@ fn nearness(asked: &str, name: &str) -> usize {
         40 - 10 * distance.min(3)
     } else {
         0
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::output::Look;
+
+    #[test]
+    fn every_answer_has_a_page() {
+        let lost = QUESTIONS.iter().flat_map(|(_, names)| *names).filter(|name| {
+            let mut setter = Setter::new(&Look::PLAIN);
+            !super::super::set_exact(&mut setter, name) && !super::super::set_chapter(&mut setter, name)
+        });
+        assert_eq!(lost.collect::<Vec<_>>(), [&""; 0]);
+    }
+
+    #[test]
+    fn questions_synonyms_and_slips_lead_to_their_pages() {
+        for (asked, first) in [
+            ("how far", "D_C"),
+            ("how old is the universe", "age("),
+            ("comoving_distnace", "D_C"),
+            ("plank2018", "planck2018"),
+            ("d_l", "D_L"),
+            ("megaparsec", "Mpc"),
+            ("mixed frames", "mixed-frames"),
+        ] {
+            let page = super::super::page(&[asked.to_owned()], &Look::PLAIN).expect(asked);
+            let start: Vec<_> = page.lines().take(2).collect();
+            assert!(start.join("\n").contains(first), "{asked}: {start:?}");
+        }
     }
 }
