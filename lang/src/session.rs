@@ -182,7 +182,7 @@ impl Session {
             let (name, what) = match &binding.meaning {
                 Meaning::Value(value) => (
                     binding.name.to_string(),
-                    self.checker.describe(&value.scheme.typed.form),
+                    self.checker.describe_scheme(&value.scheme),
                 ),
                 Meaning::Function(_) => (self.checker.signature_of(id), "a function".into()),
                 Meaning::Model(_) => (binding.name.to_string(), "a model".into()),

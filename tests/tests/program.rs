@@ -129,11 +129,12 @@ fn text_in_another_encoding_is_named_with_its_place() {
 }
 
 #[test]
-fn an_empty_sheet_does_nothing_and_says_so() {
+fn an_empty_sheet_is_refused() {
     let folder = folder();
-    let output = run(&[&sheet(&folder, "")]);
-    assert_eq!(status(&output), 0);
-    assert!(stderr(&output).contains("empty"), "{}", stderr(&output));
+    let output = run(&[&sheet(&folder, "\n \n")]);
+    refused(&output, "empty");
+    refused(&run(&["check", &sheet(&folder, "")]), "empty");
+    refused(&run(&["-e", ""]), "empty");
 }
 
 #[test]

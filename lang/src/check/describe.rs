@@ -2,7 +2,7 @@
 
 use super::form::{self, FIRST_BOUND, FIRST_TALLY, Form, Key};
 use super::infer::{ANGLE, COMOVING};
-use super::typed::Typed;
+use super::typed::{Scheme, Typed};
 use super::{BindingId, Checker, Meaning};
 use num_rational::Ratio;
 use smol_str::SmolStr;
@@ -24,6 +24,23 @@ impl Checker {
             return self.in_words(&settled.without(|key| key == ANGLE));
         }
         self.in_words(&settled)
+    }
+
+    /// What a value is, as far as its definition settles it.
+    #[must_use]
+    pub fn describe_scheme(&self, scheme: &Scheme) -> String {
+        let form = &scheme.typed.form;
+        let place = |key: Key| {
+            (FIRST_BOUND..form::FIRST_UNKNOWN)
+                .contains(&key)
+                .then(|| (key - FIRST_BOUND) as usize)
+        };
+        let along = |key: Key| place(key).and_then(|place| scheme.bound.get(place)?.along());
+        let opens = |generator: Key| form.unknowns().any(|key| along(key) == Some(generator));
+        let angle = opens(ANGLE) && form.has_other_dimension();
+        let frame = opens(COMOVING);
+        let drop = |key: Key| (angle && key == ANGLE) || (frame && key == COMOVING) || along(key).is_some();
+        self.describe(&form.without(drop))
     }
 
     /// The same, where “proper” has to be said.

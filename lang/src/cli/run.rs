@@ -18,9 +18,6 @@ use std::path::Path;
 pub fn sheet(path: &Path, invocation: &Invocation) -> Result<u8, Failure> {
     let source = files::read_sheet(path)?;
     let folder = || SheetFolder::of(path);
-    if source.text.trim().is_empty() {
-        terminal::complain(&format!("{}: empty, so there is nothing to do\n", source.name));
-    }
     run(&source, folder, invocation)
 }
 
@@ -30,6 +27,7 @@ pub fn line(text: &str, invocation: &Invocation) -> Result<u8, Failure> {
 }
 
 fn run(source: &Source, folder: impl Fn() -> SheetFolder, invocation: &Invocation) -> Result<u8, Failure> {
+    refuse_empty(source)?;
     let mut session = session(folder(), invocation)?;
     let report = session.run(source);
     if report.exit_status() < STATUS_UNUSABLE {
@@ -37,6 +35,17 @@ fn run(source: &Source, folder: impl Fn() -> SheetFolder, invocation: &Invocatio
     }
     show(&report, invocation)?;
     Ok(report.exit_status())
+}
+
+/// An empty text is hardly what was meant.
+fn refuse_empty(source: &Source) -> Result<(), Failure> {
+    if source.text.trim().is_empty() {
+        return Err(Failure::new(format!(
+            "{}: empty, so there is nothing to do",
+            source.name
+        )));
+    }
+    Ok(())
 }
 
 fn session(folder: SheetFolder, invocation: &Invocation) -> Result<Session, Failure> {
@@ -124,6 +133,7 @@ pub fn check(paths: &[std::path::PathBuf], invocation: &Invocation) -> Result<u8
 
 fn check_one(path: &Path, invocation: &Invocation) -> Result<u8, Failure> {
     let source = files::read_sheet(path)?;
+    refuse_empty(&source)?;
     let mut session = session(SheetFolder::of(path), invocation)?;
     let report = session.check(&source);
     match invocation.format {

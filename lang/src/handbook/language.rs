@@ -277,6 +277,7 @@ pub(super) static PAGES: &[LanguagePage] = &[
             "EXPR [Mpc for h]         h settled with the model in force",
             "EXPR [Mpc for h = 0.7]   h settled with the value of a paper",
             "EXPR [cm via c]          across dimensions with the constants named",
+            "EXPR [mag via f_AB]      a flux in magnitudes from a zero point, and back: [Jy via f_AB]",
             "EXPR [cMpc by hand]      the frame declared; the value stays",
         ],
         text: "A bracket ends its expression; more arithmetic needs parentheses. It binds looser than + and -, so \

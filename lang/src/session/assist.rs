@@ -66,7 +66,7 @@ impl Session {
         for (id, binding) in self.checker.environment.visible() {
             let about = match &binding.meaning {
                 Meaning::Function(_) => self.checker.signature_of(id),
-                Meaning::Value(value) => self.checker.describe(&value.scheme.typed.form),
+                Meaning::Value(value) => self.checker.describe_scheme(&value.scheme),
                 Meaning::Table(_) => "a table".into(),
                 Meaning::Model(_) | Meaning::Broken => continue,
             };
@@ -184,7 +184,7 @@ impl Session {
             .map(|column| Completion {
                 name: column.name.to_string(),
                 kind: "column",
-                about: self.checker.describe(&column.scheme.typed.form),
+                about: self.checker.describe_scheme(&column.scheme),
             })
             .collect()
     }
@@ -293,7 +293,7 @@ fn dimension_of(checker: &Checker, from: u32) -> Option<String> {
         .checked_sub(1)
         .filter(|id| *id >= from)?;
     match &checker.environment.binding(id).meaning {
-        Meaning::Value(value) => Some(checker.describe(&value.scheme.typed.form)),
+        Meaning::Value(value) => Some(checker.describe_scheme(&value.scheme)),
         Meaning::Function(_) => Some(checker.signature_of(id)),
         Meaning::Model(_) => Some("a model".into()),
         Meaning::Table(_) => Some("a table".into()),
