@@ -2,6 +2,9 @@
 //! `zij -e 'D_L(1100) [Gpc]'`.
 //!
 //! `cargo bench -p zij-tests --bench startup`
+//!
+//! On two cores shared with other work: 1.9 ms; the process takes 5.7 MB. The
+//! goals are 10 ms and 20 MB.
 
 use criterion::{Criterion, criterion_group, criterion_main};
 use std::path::PathBuf;
