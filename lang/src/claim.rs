@@ -1,4 +1,7 @@
-//! Claims: whether a computed value agrees with what is quoted.
+//! Claims: whether a computed value agrees with what is quoted, and which slip
+//! would explain it where it does not.
+
+pub mod slip;
 
 use crate::ast::{Number, Uncertainty};
 use crate::check::claim::Written;

@@ -63,6 +63,7 @@ fn perform(invocation: &arguments::Invocation) -> Result<u8, Failure> {
         Task::Sheet(path) => run::sheet(path, invocation),
         Task::Line(text) => run::line(text, invocation),
         Task::Check(paths) => run::check(paths, invocation),
+        Task::Referee(paths) => run::referee(paths, invocation),
         Task::Help(topic) => run::help(topic),
         Task::NotYet(word) => Err(Failure::new(format!("{word}: not yet"))),
     }

@@ -181,6 +181,16 @@ impl<'c> Lowering<'c> {
         })
     }
 
+    /// The nodes of the main block that are values of names, in the order of
+    /// the names: one for each model a name was evaluated under.
+    #[must_use]
+    pub fn named(&self) -> Vec<(BindingId, NodeId)> {
+        let in_main = self.memo.iter().filter(|(_, at)| at.level == 0);
+        let mut named: Vec<_> = in_main.map(|((id, _), at)| (*id, at.node)).collect();
+        named.sort_unstable();
+        named
+    }
+
     /// What has been lowered.
     #[must_use]
     pub fn finish(mut self) -> Lowered {

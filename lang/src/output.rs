@@ -7,6 +7,7 @@ pub mod json;
 pub mod look;
 pub mod markdown;
 pub mod number;
+pub mod referee;
 pub mod text;
 
 pub use look::{Look, Tone};

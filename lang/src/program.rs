@@ -31,7 +31,7 @@ pub type NodeId = u32;
 pub type BlockId = u32;
 
 /// Everything a sheet computes.
-#[derive(Default)]
+#[derive(Clone, Default)]
 pub struct Program {
     /// The bodies of binding forms and `w(z)`; blocks refer only to earlier ones.
     pub bodies: Vec<Block>,
@@ -222,7 +222,63 @@ impl Op {
     }
 }
 
+impl Op {
+    /// The same operation on other operands.
+    #[must_use]
+    pub fn with_operands(&self, mut other: impl FnMut(NodeId) -> NodeId) -> Op {
+        let mut all = |nodes: &[NodeId]| nodes.iter().map(|node| other(*node)).collect::<Vec<_>>();
+        match self {
+            Op::Constant(_) | Op::List(_) | Op::Input(_) | Op::Column(_) => self.clone(),
+            Op::Gather(nodes) => Op::Gather(all(nodes)),
+            Op::Reduce(reduction, nodes) => Op::Reduce(*reduction, all(nodes)),
+            Op::Range(from, to, step) => {
+                let (from, to) = (other(*from), other(*to));
+                Op::Range(from, to, step.with_node(other(step.node())))
+            }
+            Op::Negate(a) => Op::Negate(other(*a)),
+            Op::Not(a) => Op::Not(other(*a)),
+            Op::PowerInteger(a, power) => Op::PowerInteger(other(*a), *power),
+            Op::Sort(a) => Op::Sort(other(*a)),
+            Op::Binary(op, a, b) => Op::Binary(*op, other(*a), other(*b)),
+            Op::Compare(op, a, b) => Op::Compare(*op, other(*a), other(*b)),
+            Op::Logical(op, a, b) => Op::Logical(*op, other(*a), other(*b)),
+            Op::Filter(a, b) => Op::Filter(other(*a), other(*b)),
+            Op::Select(condition, yes, no) => Op::Select(other(*condition), other(*yes), other(*no)),
+            Op::Call(entry, model, arguments) => {
+                let model = model.map(&mut other);
+                Op::Call(entry, model, arguments.iter().map(|node| other(*node)).collect())
+            }
+            Op::Bind(bind) => {
+                let mut bind = bind.clone();
+                (bind.from, bind.to) = (other(bind.from), other(bind.to));
+                bind.captures.iter_mut().for_each(|node| *node = other(*node));
+                Op::Bind(bind)
+            }
+            Op::Model(model) => {
+                let mut model = model.clone();
+                model
+                    .settings
+                    .iter_mut()
+                    .for_each(|(_, node)| *node = other(*node));
+                if let Some((_, _, captures)) = &mut model.function {
+                    captures.iter_mut().for_each(|node| *node = other(*node));
+                }
+                Op::Model(model)
+            }
+        }
+    }
+}
+
 impl RangeStep {
+    fn with_node(self, node: NodeId) -> RangeStep {
+        match self {
+            RangeStep::Every(_) => RangeStep::Every(node),
+            RangeStep::EveryDex(_) => RangeStep::EveryDex(node),
+            RangeStep::Steps(_) => RangeStep::Steps(node),
+            RangeStep::LogSteps(_) => RangeStep::LogSteps(node),
+        }
+    }
+
     /// The node that holds the step or the number of steps.
     #[must_use]
     pub fn node(self) -> NodeId {

@@ -119,6 +119,22 @@ pub struct ClaimReport {
     pub unit: String,
     /// The half width of the agreement, in `unit`, where there is one.
     pub tolerance: Option<f64>,
+    /// The slips that would explain a number that disagrees, the likeliest
+    /// first.
+    pub slips: Vec<SlipReport>,
+    /// Whether slips were looked for.
+    pub searched: bool,
+}
+
+/// A known mistake that gives the quoted digits.
+#[derive(Clone, Debug, PartialEq)]
+pub struct SlipReport {
+    /// Its name in the catalogue; two with a plus between them for a pair.
+    pub key: String,
+    /// What the mistake gives, in the unit of the claim.
+    pub gives: f64,
+    /// What was done, as it stands after “would follow from”.
+    pub about: String,
 }
 
 /// A table's columns, already in their units.

@@ -16,7 +16,7 @@ pub mod halo;
 pub mod horizon;
 pub mod inverse;
 pub mod power;
-mod template;
+pub(crate) mod template;
 pub mod values;
 
 use crate::catalogue::Entry;

@@ -14,5 +14,6 @@ pub mod model;
 pub mod numerics;
 pub mod prelude;
 pub mod redshift;
+pub mod slips;
 pub mod units;
 pub mod words;

@@ -280,3 +280,46 @@ pub fn on_threads<T: Send>(threads: usize, work: impl FnOnce() -> T + Send) -> T
     let pool = rayon::ThreadPoolBuilder::new().num_threads(threads).build();
     pool.expect("threads can be started").install(work)
 }
+
+/// A claim's verdict, and the slips found: their names and what they give.
+#[derive(Clone, Debug)]
+pub struct Judged {
+    /// The verdict.
+    pub agrees: Option<bool>,
+    /// The slips, the likeliest first.
+    pub slips: Vec<(String, f64)>,
+}
+
+/// The verdicts of a report.
+#[must_use]
+pub fn judged(report: &Report) -> Vec<Judged> {
+    let judged = |item: &Item| match item {
+        Item::Claim(claim) => Some(Judged {
+            agrees: claim.agrees,
+            slips: claim
+                .slips
+                .iter()
+                .map(|slip| (slip.key.clone(), slip.gives))
+                .collect(),
+        }),
+        Item::Result(_) | Item::Printed(_) | Item::Table(_) | Item::Text(_) => None,
+    };
+    report.items.iter().filter_map(judged).collect()
+}
+
+/// The single numbers that a report shows, in order.
+#[must_use]
+pub fn numbers(report: &Report) -> Vec<f64> {
+    let number = |item: &Item| match item {
+        Item::Result(Shown {
+            value: Numbers::Scalar(value),
+            ..
+        })
+        | Item::Printed(Shown {
+            value: Numbers::Scalar(value),
+            ..
+        }) => Some(*value),
+        Item::Result(_) | Item::Printed(_) | Item::Claim(_) | Item::Table(_) | Item::Text(_) => None,
+    };
+    report.items.iter().filter_map(number).collect()
+}

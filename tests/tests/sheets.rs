@@ -72,7 +72,9 @@ fn every_example_sheet_runs_and_its_claims_agree() {
     let mut failures = Vec::new();
     for path in &paths {
         let report = subject::run_at(path, &repository::read(path));
-        let bad = report.exit_status() != 0 || !report.diagnostics.is_empty();
+        // The numbers of a paper as it was submitted: some are wrong.
+        let expected = u8::from(path.ends_with("referee_report.zij"));
+        let bad = report.exit_status() != expected || !report.diagnostics.is_empty();
         if bad {
             let unmet = subject::unmet_claims(&report).join("\n");
             failures.push(format!(

@@ -17,6 +17,8 @@ pub enum Task {
     Line(String),
     /// Check sheets and evaluate nothing.
     Check(Vec<PathBuf>),
+    /// Judge the claims of sheets and show nothing else.
+    Referee(Vec<PathBuf>),
     /// Show pages of the handbook.
     Help(Vec<String>),
     /// Something that is planned.
@@ -46,8 +48,7 @@ pub enum Refusal {
 }
 
 /// Commands that are planned and take any arguments.
-const PLANNED: [(&str, &str); 3] = [
-    ("referee", "the claims alone, with the slips (not yet)"),
+const PLANNED: [(&str, &str); 2] = [
     ("paper", "what the paper needs: macros, tables, figures (not yet)"),
     ("tidy", "lay out a sheet in the one style (not yet)"),
 ];
@@ -76,9 +77,14 @@ fn command() -> Command {
         .value_name("SHEET")
         .num_args(1..)
         .required(true);
+    let sheets = sheets.value_parser(clap::value_parser!(PathBuf));
     let check = Command::new("check")
         .about("check sheets and evaluate nothing")
-        .arg(sheets.value_parser(clap::value_parser!(PathBuf)))
+        .arg(sheets.clone())
+        .args(shared());
+    let referee = Command::new("referee")
+        .about("the claims alone: a verdict on each, and the slip that would explain a wrong one")
+        .arg(sheets)
         .args(shared());
     let topic = Arg::new("topic").value_name("TOPIC").num_args(0..);
     let help = Command::new("help")
@@ -99,6 +105,7 @@ fn command() -> Command {
         .args_conflicts_with_subcommands(true)
         .subcommand_precedence_over_arg(true)
         .subcommand(check)
+        .subcommand(referee)
         .subcommand(help)
         .subcommands(planned)
         .arg(
@@ -143,6 +150,7 @@ fn shared() -> [Arg; 3] {
 fn invocation(matches: &ArgMatches) -> Result<Invocation, Refusal> {
     let (task, options) = match matches.subcommand() {
         Some(("check", inner)) => (Task::Check(all(inner, "sheets")), Some(inner)),
+        Some(("referee", inner)) => (Task::Referee(all(inner, "sheets")), Some(inner)),
         Some(("help", inner)) => (Task::Help(all(inner, "topic")), None),
         Some((planned, _)) => (Task::NotYet(planned.into()), None),
         None => (plain_task(matches), Some(matches)),
@@ -211,6 +219,7 @@ mod tests {
         assert_eq!(task("-e -1"), Task::Line("-1".into()));
         assert_eq!(task("-e z=1 -e D_L(z)"), Task::Line("z=1\nD_L(z)".into()));
         assert_eq!(task("check a b"), Task::Check(vec!["a".into(), "b".into()]));
+        assert_eq!(task("referee a b"), Task::Referee(vec!["a".into(), "b".into()]));
         assert_eq!(task("help D_L"), Task::Help(vec!["D_L".into()]));
         assert_eq!(task("help"), Task::Help(vec![]));
         assert_eq!(task("tidy --write x"), Task::NotYet("tidy".into()));
@@ -232,6 +241,7 @@ mod tests {
             "--as xml a",
             "--as latex a",
             "check",
+            "referee",
             "--such",
             "-e 1 a.zij",
             "--given",

@@ -148,6 +148,50 @@ fn check_one(path: &Path, invocation: &Invocation) -> Result<u8, Failure> {
     Ok(report.exit_status())
 }
 
+/// Judges the claims of sheets; the status is the worst of them.
+pub fn referee(paths: &[std::path::PathBuf], invocation: &Invocation) -> Result<u8, Failure> {
+    if invocation.format == Format::Csv {
+        return Err(Failure::new(
+            "--as csv: the forms of a verdict are text, json and markdown",
+        ));
+    }
+    let mut worst = 0;
+    let mut reports = Vec::new();
+    for path in paths {
+        match judge(path, invocation) {
+            Ok(report) => {
+                worst = worst.max(report.exit_status());
+                reports.push(report);
+            }
+            Err(failure) => {
+                terminal::complain(&format!("zij: {}\n", failure.0));
+                worst = worst.max(STATUS_UNUSABLE);
+            }
+        }
+    }
+    if invocation.format != Format::Json || invocation.output.is_some() {
+        reports.iter().for_each(complain_of);
+    }
+    match &invocation.output {
+        None => terminal::print(&output::referee::render(
+            &reports,
+            invocation.format,
+            &output_look(),
+        ))?,
+        Some(path) => {
+            let text = output::referee::render(&reports, invocation.format, &output::Look::PLAIN);
+            files::write_output(path, &text)?;
+        }
+    }
+    Ok(worst)
+}
+
+fn judge(path: &Path, invocation: &Invocation) -> Result<Report, Failure> {
+    let source = files::read_sheet(path)?;
+    let mut session = session(SheetFolder::of(path), invocation)?;
+    Ok(session.referee(&source))
+}
+
 /// Pages of the handbook.
 pub fn help(topic: &[String]) -> Result<u8, Failure> {
     let page = handbook::page(topic, &output_look()).map_err(Failure::new)?;

@@ -147,7 +147,9 @@ pub(super) static PAGES: &[LanguagePage] = &[
         ],
         text: "`is` agrees when the computed value rounds to the digits as written; `is about` allows half a unit of \
                the last digit that is not zero; `within` sets the tolerance, in percent of the quoted value or as a \
-               quantity. A label in quotes says where the number stands. A claim that disagrees gives exit status 1.",
+               quantity. A label in quotes says where the number stands. A claim that disagrees gives exit status 1, \
+               and is shown with the known slips that would give its digits, or with the word that none does. They \
+               are arithmetic, and say nothing of what was really done.",
         example: "assume planck2018\nclaim \"abstract\": 2 * particle_horizon() is 93 Gly within 2%",
     },
     LanguagePage {
@@ -447,6 +449,7 @@ pub(super) static PAGES: &[LanguagePage] = &[
             "options",
             "exit status",
             "check",
+            "referee",
             "json",
             "--given",
             "--as",
@@ -458,6 +461,7 @@ pub(super) static PAGES: &[LanguagePage] = &[
             "zij SHEET    zij -        run a sheet, or standard input as one",
             "zij -e 'EXPR'             run one line",
             "zij check SHEET…          check and evaluate nothing",
+            "zij referee SHEET…        judge the claims alone, and look for the slips",
             "zij help TOPIC            this handbook",
         ],
         text: "--given NAME=VALUE replaces an input; --as text, json, csv or markdown chooses the form of the \

@@ -4,7 +4,7 @@
 
 use super::{frame_key, one_line};
 use crate::diagnostic::{Diagnostic, Severity};
-use crate::report::{ClaimReport, Item, ModelReport, Numbers, Report, Shown, TableReport};
+use crate::report::{ClaimReport, Item, ModelReport, Numbers, Report, Shown, SlipReport, TableReport};
 use crate::source::{Places, Span};
 use serde::ser::{Serialize, SerializeMap, SerializeSeq, Serializer};
 
@@ -15,6 +15,53 @@ pub fn render(report: &Report) -> String {
     let mut text = serde_json::to_string(&document(report)).unwrap_or_default();
     text.push('\n');
     text
+}
+
+/// The claims of several sheets with their totals, with a line break at the
+/// end.
+#[must_use]
+pub fn referee(reports: &[Report], totals: super::referee::Totals) -> String {
+    let sheet = |report| {
+        let Document {
+            sheet,
+            model,
+            claims,
+            warnings,
+            errors,
+            ..
+        } = document(report);
+        RefereedSheet {
+            sheet,
+            model,
+            claims,
+            warnings,
+            errors,
+        }
+    };
+    let refereed = Refereed {
+        zij: env!("CARGO_PKG_VERSION"),
+        sheets: reports.iter().map(sheet).collect(),
+        totals,
+    };
+    let mut text = serde_json::to_string(&refereed).unwrap_or_default();
+    text.push('\n');
+    text
+}
+
+#[derive(serde::Serialize)]
+struct Refereed<'a> {
+    zij: &'static str,
+    sheets: Vec<RefereedSheet<'a>>,
+    totals: super::referee::Totals,
+}
+
+#[derive(serde::Serialize)]
+struct RefereedSheet<'a> {
+    sheet: Option<&'a str>,
+    model: Option<Model<'a>>,
+    claims: Vec<Claim<'a>>,
+    warnings: Vec<Message<'a>>,
+    errors: Vec<Message<'a>>,
 }
 
 #[derive(serde::Serialize)]
@@ -70,7 +117,14 @@ struct Claim<'a> {
     computed: Figures<'a>,
     unit: &'a str,
     tolerance: Option<f64>,
-    slips: [&'static str; 0],
+    slips: Vec<Slip<'a>>,
+}
+
+#[derive(serde::Serialize)]
+struct Slip<'a> {
+    slip: &'a str,
+    gives: f64,
+    about: &'a str,
 }
 
 /// A number where one was quoted, else the words (`between 1 and 2`, `never`).
@@ -241,7 +295,15 @@ fn claim(claim: &ClaimReport) -> Claim<'_> {
         computed: Figures(&claim.computed),
         unit: &claim.unit,
         tolerance: claim.tolerance,
-        slips: [],
+        slips: claim.slips.iter().map(slip).collect(),
+    }
+}
+
+fn slip(slip: &SlipReport) -> Slip<'_> {
+    Slip {
+        slip: &slip.key,
+        gives: slip.gives,
+        about: &slip.about,
     }
 }
 
@@ -363,6 +425,8 @@ mod tests {
             computed: Numbers::Scalar(2.0),
             unit: String::new(),
             tolerance: None,
+            slips: Vec::new(),
+            searched: false,
         };
         let column = TableColumn {
             name: "z".into(),

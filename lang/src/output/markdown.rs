@@ -96,7 +96,7 @@ fn table(table: &TableReport) -> String {
     pipes(&head, &numeric, &rows)
 }
 
-fn model(model: &ModelReport) -> String {
+pub(super) fn model(model: &ModelReport) -> String {
     let set = |(name, value, unit): &(String, Numbers, String)| {
         let value = number::numbers(value, &Look::PLAIN);
         format!("{} = {value} {unit}", escaped(name))
@@ -116,7 +116,7 @@ fn model(model: &ModelReport) -> String {
     format!("{}.\n", sentences.join("; "))
 }
 
-fn pipes(head: &[&str], numeric: &[usize], rows: &[Vec<String>]) -> String {
+pub(super) fn pipes(head: &[&str], numeric: &[usize], rows: &[Vec<String>]) -> String {
     let rule = (0..head.len()).map(|index| if numeric.contains(&index) { "--:" } else { "---" });
     let mut text = format!(
         "| {} |\n| {} |\n",
@@ -130,7 +130,7 @@ fn pipes(head: &[&str], numeric: &[usize], rows: &[Vec<String>]) -> String {
 }
 
 /// Text in which nothing is taken for markup.
-fn escaped(text: &str) -> String {
+pub(super) fn escaped(text: &str) -> String {
     let mut result = String::new();
     for letter in one_line(text).chars() {
         if matches!(letter, '|' | '\\' | '`' | '*' | '_' | '[' | ']' | '<' | '#' | '~') {
@@ -142,7 +142,7 @@ fn escaped(text: &str) -> String {
 }
 
 /// Source text; a pipe would end the cell even inside backticks.
-fn code(text: &str) -> String {
+pub(super) fn code(text: &str) -> String {
     let text = one_line(text).replace('|', "\\|");
     if text.contains('`') {
         format!("`` {text} ``")

@@ -5,7 +5,7 @@
 use super::look::{self, Look, Tone};
 use super::{frame_word, number, one_line};
 use crate::report::{
-    ClaimReport, Frame, Item, ModelReport, Numbers, Report, Shown, TableColumn, TableReport,
+    ClaimReport, Frame, Item, ModelReport, Numbers, Report, Shown, SlipReport, TableColumn, TableReport,
 };
 
 /// Rows of a table shown in the text form; the other forms have them all.
@@ -179,7 +179,7 @@ fn unit_gap(unit: &str) -> &'static str {
 }
 
 /// Text after a head, going on below itself where it is too long.
-fn hanging(head: &str, text: &str, look: &Look) -> String {
+pub(super) fn hanging(head: &str, text: &str, look: &Look) -> String {
     let indent = look::width(head).min(look.width / 3).max(2);
     let room = look.width.saturating_sub(indent).max(12);
     let first_room = look.width.saturating_sub(look::width(head));
@@ -194,7 +194,7 @@ fn hanging(head: &str, text: &str, look: &Look) -> String {
     }
 }
 
-fn indented(text: &str, indent: usize, look: &Look) -> String {
+pub(super) fn indented(text: &str, indent: usize, look: &Look) -> String {
     let room = look.width.saturating_sub(indent).max(12);
     look::wrap(text, room)
         .iter()
@@ -222,12 +222,30 @@ fn claim_lines(claim: &ClaimReport, look: &Look) -> String {
     if claim.agrees != Some(false) && look::width(&one) <= look.width {
         return format!("{}\n", one.trim_end());
     }
+    let indent = 11.min(look.width / 4);
     let detail = if figures.is_empty() {
         String::new()
     } else {
-        indented(&figures, 11.min(look.width / 4), look)
+        indented(&figures, indent, look)
     };
-    format!("{}{detail}", hanging(&head, &statement, look))
+    let slips: String = slip_lines(claim, look)
+        .iter()
+        .map(|line| indented(line, indent, look))
+        .collect();
+    format!("{}{detail}{slips}", hanging(&head, &statement, look))
+}
+
+/// What would give the quoted number.
+pub(super) fn slip_lines(claim: &ClaimReport, look: &Look) -> Vec<String> {
+    if claim.searched && claim.slips.is_empty() {
+        return vec!["no plain slip gives this number".into()];
+    }
+    let line = |slip: &SlipReport| {
+        let gives = number::short(slip.gives, look);
+        let unit = with_gap(&claim.unit);
+        format!("{gives}{unit} would follow from {} ({})", slip.about, slip.key)
+    };
+    claim.slips.iter().map(line).collect()
 }
 
 /// Quoted, computed and their ratio, as far as they are numbers.
@@ -502,6 +520,8 @@ mod tests {
             computed: Numbers::Scalar(50.0),
             unit: "Gly".into(),
             tolerance: Some(0.5),
+            slips: Vec::new(),
+            searched: false,
         };
         assert_eq!(
             text(vec![Item::Claim(claim)], &Look::PLAIN),

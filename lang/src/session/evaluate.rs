@@ -5,7 +5,8 @@ use super::Files;
 use super::words::Units;
 use crate::ast::{self, Assertion, Expr, Tolerance};
 use crate::check::claim::{is_relative, written};
-use crate::check::{BindingId, Checker, ClaimTask, Face, Meaning, Output, Show, TableTask, Task};
+use crate::check::{BindingId, Checker, ClaimTask, Face, Meaning, Output, Show, Space, TableTask, Task};
+use crate::claim::slip::{self, Named, Scene, Suspect};
 use crate::claim::{self, Allowance};
 use crate::data::{self, Data};
 use crate::diagnostic::Diagnostic;
@@ -29,6 +30,7 @@ pub(super) fn evaluate(checker: &Checker, files: &dyn Files, report: &mut Report
         .map(|task| lower_task(&mut lowering, task))
         .collect();
     let model = lowering.model();
+    let named = lowering.named();
     let Lowered {
         mut program,
         columns,
@@ -56,10 +58,13 @@ pub(super) fn evaluate(checker: &Checker, files: &dyn Files, report: &mut Report
         faults: Vec::new(),
         model,
         misfits: Vec::new(),
+        suspects: Vec::new(),
     };
     for (task, nodes) in checker.tasks.iter().zip(&nodes) {
-        report.items.push(run.item(task, nodes));
+        let item = run.item(task, nodes, report.items.len());
+        report.items.push(item);
     }
+    run.look_for_slips(&program, &named, &mut report.items);
     report.model = run.report_of_model();
     let faults = std::mem::take(&mut run.faults);
     report.faulted |= !run.misfits.is_empty();
@@ -162,10 +167,12 @@ pub(super) struct Run<'a> {
     model: NodeId,
     /// Columns that do not fit their table.
     misfits: Vec<(usize, Diagnostic)>,
+    /// Claims that disagree, each with the place of its item.
+    suspects: Vec<(usize, Suspect)>,
 }
 
 impl Run<'_> {
-    fn item(&mut self, task: &Task, nodes: &[NodeId]) -> Item {
+    fn item(&mut self, task: &Task, nodes: &[NodeId], place: usize) -> Item {
         match task {
             Task::Show(show) => {
                 let shown = self.show(show, nodes[0]);
@@ -175,7 +182,7 @@ impl Run<'_> {
                     Item::Printed(shown)
                 }
             }
-            Task::Claim(task) => Item::Claim(self.claim(task, nodes)),
+            Task::Claim(task) => Item::Claim(self.claim(task, nodes, place)),
             Task::Table(table) => Item::Table(self.table(table, nodes)),
             Task::Explain(task) => Item::Text(self.explain(task, nodes)),
             Task::Help(topic) => Item::Text(help(topic.as_deref())),
@@ -300,7 +307,7 @@ impl Run<'_> {
         }
     }
 
-    fn claim(&mut self, task: &ClaimTask, nodes: &[NodeId]) -> ClaimReport {
+    fn claim(&mut self, task: &ClaimTask, nodes: &[NodeId], place: usize) -> ClaimReport {
         let (unit, factor) = self.checker.unit_of(&task.face.form, task.face.unit.as_ref());
         let computed = self.numbers(nodes[0], &task.face);
         let quoted = task.claim.assertion.as_ref();
@@ -313,15 +320,59 @@ impl Run<'_> {
             computed,
             unit: if task.face.truth { String::new() } else { unit },
             tolerance: None,
+            slips: Vec::new(),
+            searched: false,
         };
         let others: Option<Vec<f64>> = nodes[1..]
             .iter()
             .map(|node| self.value(*node)?.scalar())
             .collect();
         if let Some(others) = others {
-            judge(&mut claim, &task.claim, &others, factor);
+            let allowance = judge(&mut claim, &task.claim, &others, factor);
+            if let Some(suspect) = allowance
+                .and_then(|allowance| suspect(&claim, task, nodes[0], factor, self.checker, allowance))
+            {
+                self.suspects.push((place, suspect));
+            }
         }
         claim
+    }
+
+    /// Looks for the slips behind the claims that disagree, all at once.
+    fn look_for_slips(&mut self, program: &Program, named: &[(BindingId, NodeId)], items: &mut [Item]) {
+        if self.suspects.is_empty() {
+            return;
+        }
+        let named: Vec<Named> = named.iter().filter_map(|named| self.named(*named)).collect();
+        let (places, suspects): (Vec<usize>, Vec<Suspect>) =
+            std::mem::take(&mut self.suspects).into_iter().unzip();
+        let mut scene = Scene {
+            program,
+            evaluator: &mut self.evaluator,
+            named: &named,
+            model: self.model,
+        };
+        for (place, found) in places.into_iter().zip(slip::search(&mut scene, &suspects)) {
+            if let Some(Item::Claim(claim)) = items.get_mut(place) {
+                claim.slips = found;
+                claim.searched = true;
+            }
+        }
+    }
+
+    /// A name of the sheet with its value.
+    fn named(&self, (id, node): (BindingId, NodeId)) -> Option<Named> {
+        let binding = self.checker.environment.binding(id);
+        let Meaning::Value(value) = &binding.meaning else {
+            return None;
+        };
+        if binding.space != Space::Value {
+            return None;
+        }
+        let typed = &value.scheme.typed;
+        let (_, factor) = self.checker.unit_of(&typed.form, typed.unit.as_ref());
+        let name = binding.name.to_string();
+        Some(Named { name, node, factor })
     }
 
     fn quoted_text(&self, quoted: &Assertion, task: &ClaimTask) -> String {
@@ -414,18 +465,30 @@ fn frame(form: &crate::check::form::Form, words: &str) -> Frame {
 
 /// The verdict, from the values that were computed: `others` are what is
 /// quoted and the tolerance, in SI.
-fn judge(claim: &mut ClaimReport, written_claim: &ast::Claim, others: &[f64], factor: f64) {
+///
+/// Returns what was allowed, where a number was quoted.
+fn judge(
+    claim: &mut ClaimReport,
+    written_claim: &ast::Claim,
+    others: &[f64],
+    factor: f64,
+) -> Option<Allowance> {
+    let mut allowed = None;
     let values = match &claim.computed {
         Numbers::Scalar(one) => vec![*one],
         Numbers::Series(many) => many.clone(),
         Numbers::Never => vec![f64::INFINITY],
-        Numbers::Truth(one) => return claim.agrees = Some(*one),
-        Numbers::Truths(many) => return claim.agrees = Some(many.iter().all(|one| *one)),
-        Numbers::Missing => return,
+        Numbers::Truth(one) => {
+            claim.agrees = Some(*one);
+            return None;
+        }
+        Numbers::Truths(many) => {
+            claim.agrees = Some(many.iter().all(|one| *one));
+            return None;
+        }
+        Numbers::Missing => return None,
     };
-    let Some(assertion) = &written_claim.assertion else {
-        return;
-    };
+    let assertion = written_claim.assertion.as_ref()?;
     let all = |holds: &dyn Fn(f64) -> bool| values.iter().all(|value| holds(*value));
     let quoted: Vec<f64> = others.iter().map(|value| value / factor).collect();
     claim.quoted_value = match assertion {
@@ -436,10 +499,9 @@ fn judge(claim: &mut ClaimReport, written_claim: &ast::Claim, others: &[f64], fa
         (Assertion::Is(expr) | Assertion::About(expr), [value, ..]) => {
             let about = matches!(assertion, Assertion::About(_));
             let tolerance = written_claim.within.as_ref().zip(others.get(1));
-            let Some(allowance) = allowance(expr, about, tolerance, *value, factor) else {
-                return;
-            };
+            let allowance = allowance(expr, about, tolerance, *value, factor)?;
             claim.tolerance = Some(allowance.width());
+            allowed = Some(allowance);
             all(&|computed| allowance.admits(*value, computed))
         }
         (Assertion::Above(_), [value, ..]) => all(&|computed| computed > *value),
@@ -448,9 +510,53 @@ fn judge(claim: &mut ClaimReport, written_claim: &ast::Claim, others: &[f64], fa
         (Assertion::AtMost(_), [value, ..]) => all(&|computed| computed <= *value),
         (Assertion::Between(..), [low, high, ..]) => all(&|computed| *low <= computed && computed <= *high),
         (Assertion::Never(_), _) => all(&|computed| computed == f64::INFINITY),
-        (_, _) => return,
+        (_, _) => return None,
     };
     claim.agrees = Some(verdict);
+    allowed
+}
+
+/// A claim whose slip is to be looked for: a number that was written and
+/// disagrees.
+fn suspect(
+    claim: &ClaimReport,
+    task: &ClaimTask,
+    node: NodeId,
+    factor: f64,
+    checker: &Checker,
+    allowance: Allowance,
+) -> Option<Suspect> {
+    let (Some(false), Numbers::Scalar(computed), Some(quoted)) =
+        (claim.agrees, &claim.computed, claim.quoted_value)
+    else {
+        return None;
+    };
+    let (Some(Assertion::Is(expr) | Assertion::About(expr)), true) =
+        (&task.claim.assertion, *computed != 0.0 && quoted != 0.0)
+    else {
+        return None;
+    };
+    let number = written(expr)?;
+    let about = matches!(task.claim.assertion, Some(Assertion::About(_)));
+    let unit = (quoted / (number.number.value * number.sign)).abs();
+    let digits = if about {
+        claim::about(number.number)
+    } else {
+        claim::as_written(&number)
+    };
+    Some(Suspect {
+        node,
+        factor,
+        dimension: checker.settled(&task.face.form).library_part(),
+        computed: *computed,
+        quoted,
+        text: number.number.text.as_str().into(),
+        allowance,
+        digits: Allowance {
+            below: digits.below * unit,
+            above: digits.above * unit,
+        },
+    })
 }
 
 /// How far off the computed value may be, in the unit of the quoted one.
