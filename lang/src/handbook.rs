@@ -9,6 +9,7 @@
 //!
 //! What is known of the library stands in its catalogue and is only set here.
 
+mod bibtex;
 pub mod codes;
 mod entry;
 mod language;
@@ -32,6 +33,10 @@ use zij_stdlib::units;
 /// # Errors
 /// A sentence, where the handbook has nothing on it.
 pub fn page(topic: &[String], look: &Look) -> Result<String, String> {
+    let words: Vec<&str> = topic.iter().flat_map(|words| words.split_whitespace()).collect();
+    if let ["bibtex", names @ ..] = words.as_slice() {
+        return bibtex::records(names);
+    }
     let topic = topic.join(" ");
     let topic = topic.trim();
     let mut setter = Setter::new(look);
@@ -197,6 +202,7 @@ fn set_overview(setter: &mut Setter) {
         "help claim",
         "help brackets",
         "help mixed-frames",
+        "help bibtex D_L",
     ] {
         setter.sheet(line);
     }

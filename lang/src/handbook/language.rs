@@ -236,9 +236,15 @@ pub(super) static PAGES: &[LanguagePage] = &[
         names: &["help"],
         chapter: Chapter::Statements,
         about: "a page of this handbook",
-        forms: &["help", "help NAME", "help \"some words\"", "zij help NAME"],
+        forms: &[
+            "help",
+            "help NAME",
+            "help \"some words\"",
+            "zij help NAME",
+            "zij help bibtex NAME …",
+        ],
         text: "NAME may be a function, a constant, a unit, a model, a parameter, a word of the language, the code of \
-               a message, or a chapter.",
+               a message, or a chapter. `help bibtex NAME …` gives the works behind names as BibTeX records.",
         example: "help D_L",
     },
     // Notation.
