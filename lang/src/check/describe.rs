@@ -166,11 +166,7 @@ pub fn base_units(dimension: &Dimension) -> String {
     for (generator, symbol) in symbols {
         parts.extend(power_text(symbol, dimension.exponent(generator)));
     }
-    let has_length = !form::is_zero(dimension.exponent(Generator::Length));
-    let has_mass = !form::is_zero(dimension.exponent(Generator::Mass));
-    if has_length || has_mass {
-        parts.extend(power_text("h", dimension.exponent(Generator::LittleH)));
-    }
+    parts.extend(power_text("h", dimension.exponent(Generator::LittleH)));
     parts.join(" ")
 }
 

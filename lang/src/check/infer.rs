@@ -305,7 +305,7 @@ impl Checker {
             b.unit.clone()
         };
         let mut form = a.form.clone();
-        if is_one(left) || is_one(right) {
+        if (is_one(left) && !is_part(right)) || (is_one(right) && !is_part(left)) {
             // 1+z is how one settles a frame by hand.
             let fixed = self.unifier.resolve(&form);
             if fixed.parts().all(|(key, _)| key >= form::FIRST_BOUND) {
@@ -541,6 +541,11 @@ pub(super) fn unit_like(form: &Form, unit: &Measure) -> Option<Arc<Measure>> {
     (same.is_number() && new.is_integer())
         .then(|| power_of(unit, symbol, old, *new.numer()))
         .flatten()
+}
+
+/// Whether this is a written part, `3%`, which is no redshift.
+fn is_part(expr: &Expr) -> bool {
+    literal_unit(expr).is_some()
 }
 
 /// A unit that is one symbol to a whole power: `km`, `km^2`.

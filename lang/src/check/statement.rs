@@ -39,6 +39,8 @@ pub struct ExplainTask {
     pub show: Show,
     /// As written.
     pub expr: Arc<Expr>,
+    /// It needs the model assumed.
+    pub needs_model: bool,
     /// The values of the sheet that it rests on, in order.
     pub values: Vec<BindingId>,
     /// The functions of the sheet that it rests on, in order.
@@ -527,6 +529,7 @@ impl Checker {
         if typed.is_unknown() {
             return;
         }
+        let needs_model = self.needs_model;
         let closure = self.environment.closure(&self.rests_on);
         let of_kind = |wanted: &dyn Fn(&Meaning) -> bool| -> Vec<BindingId> {
             closure
@@ -544,6 +547,7 @@ impl Checker {
             self.tasks.push(Task::Explain(ExplainTask {
                 show,
                 expr,
+                needs_model,
                 values,
                 functions,
                 limit,

@@ -27,7 +27,7 @@ impl Run<'_> {
         let mut text = format!("{} = {}\n", one_line(&shown.name), value_text(&shown));
         let own = self.own_values(task, &nodes[1..]);
         let filled = self.filled(task, &own);
-        if filled != shown.name {
+        if filled != shown.name && filled != value_text(&shown) {
             let _ = writeln!(text, "  = {}", one_line(&filled));
         }
         let mut met = Met::default();
@@ -37,7 +37,7 @@ impl Run<'_> {
         }
         self.describe_functions(task, &mut text, &mut met);
         describe_library(&met, &mut text);
-        self.describe_model(&mut text);
+        self.describe_model(task, &mut text);
         sources(&met, &mut text);
         text
     }
@@ -179,13 +179,18 @@ impl Run<'_> {
         });
     }
 
-    fn describe_model(&mut self, text: &mut String) {
+    fn describe_model(&mut self, task: &ExplainTask, text: &mut String) {
+        if let ExprKind::Under(_, model) = &task.expr.kind {
+            let written = self.checker.sources[usize::from(task.show.place.source)].slice(model.span);
+            let _ = write!(text, "\n\n  model {}", one_line(written));
+            return;
+        }
+        if !task.needs_model {
+            return;
+        }
         let Some(model) = self.report_of_model() else {
             return;
         };
-        if !model.used {
-            return;
-        }
         let how = if model.by_default {
             ", taken because the sheet assumes none"
         } else {
@@ -250,6 +255,8 @@ fn value_text(shown: &Shown) -> String {
     } else {
         format!(" {}", shown.unit)
     };
+    let frame = crate::output::frame_word(shown).map_or_else(String::new, |word| format!(" ({word})"));
+    let unit = format!("{unit}{frame}");
     match &shown.value {
         Numbers::Scalar(value) => format!("{}{unit}", plain_number(*value)),
         Numbers::Series(values) => {
