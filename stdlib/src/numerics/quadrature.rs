@@ -51,7 +51,7 @@ pub fn legendre(a: f64, b: f64, mut f: impl FnMut(f64) -> f64) -> f64 {
 }
 
 /// `∫ₐᵇ f dx`, halving panels until they agree to `relative` of the whole, or
-/// until [`MAX_PANELS`] were used: what is left then is noise.
+/// until `MAX_PANELS` were used: what is left then is noise.
 pub fn adaptive(a: f64, b: f64, relative: f64, mut f: impl FnMut(f64) -> f64) -> f64 {
     let whole = legendre(a, b, &mut f);
     let mut halving = Halving {
