@@ -2,14 +2,14 @@
 //!
 //! Each slip of the library's catalogue that can befall a claim is made in
 //! the claim's own expression: calls and models are replaced in its program
-//! ([`rewrite`]), or its value is multiplied. All mistakes of all disagreeing
+//! (`rewrite`), or its value is multiplied. All mistakes of all disagreeing
 //! claims run as one program, so they share models and tables.
 //!
 //! A slip fits when its value agrees with the quoted digits by the claim's
 //! own allowance. Fits are weighed against chance. Let `w` be the weight of a
 //! slip among all that were tried (they sum to one), and let the quoted number,
 //! if it comes from somewhere else, lie anywhere within a factor
-//! [`ANYWHERE`] with even chance in its logarithm. Then the odds for the slip are
+//! `ANYWHERE` with even chance in its logarithm. Then the odds for the slip are
 //!
 //! ```text
 //!            w
