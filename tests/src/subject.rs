@@ -323,3 +323,24 @@ pub fn numbers(report: &Report) -> Vec<f64> {
     };
     report.items.iter().filter_map(number).collect()
 }
+
+impl Talk {
+    /// Everything the prompt asks for while a line is being typed, the cursor
+    /// after so many bytes.
+    pub fn assist(&self, line: &str, cursor: usize) {
+        let _ = self.0.hint(line);
+        let (start, _) = self.0.complete(line, cursor);
+        assert!(
+            line.get(start..cursor).is_some(),
+            "completion of {line:?} at {cursor} starts at {start}"
+        );
+        for (place, _) in self.0.highlight(line) {
+            assert!(
+                line.get(place.clone()).is_some(),
+                "colour of {line:?} at {place:?}"
+            );
+        }
+        let _ = self.0.wants_more(line);
+        let _ = self.0.names();
+    }
+}

@@ -62,3 +62,26 @@ fn the_generated_sheet_has_the_right_form_and_length() {
         sheet.lines().count()
     );
 }
+
+#[track_caller]
+fn refused_for(text: &str, code: &str) {
+    let found = zij_tests::subject::form(text);
+    assert!(found.iter().any(|one| one.code == code), "{:?}", found.first());
+    assert!(found.len() <= 501, "{}", found.len());
+}
+
+#[test]
+fn what_is_too_much_is_refused_by_name() {
+    refused_for(&"1 + 1\n".repeat(3 << 20), "source-too-large");
+    refused_for(&"1\n".repeat(500_001), "too-many-statements");
+    refused_for(
+        &format!("x = {{{}1}}\n", "1, ".repeat(100_000)),
+        "statement-too-long",
+    );
+    refused_for(&"2x\n".repeat(2_000), "too-many-errors");
+    refused_for(&format!("x = {}1\n", "1 + ".repeat(5_000)), "expression-too-long");
+    refused_for(
+        &format!("x = {}1{}\n", "(".repeat(200), ")".repeat(200)),
+        "nested-too-deep",
+    );
+}

@@ -109,6 +109,22 @@ fn cases() -> impl Strategy<Value = Case> {
 }
 
 proptest! {
+    #![proptest_config(config(150))]
+
+    #[test]
+    fn any_talk_goes_on_without_a_panic(entries in prop::collection::vec(written::entry(), 1..8), cut in any::<prop::sample::Index>()) {
+        let mut talk = subject::Talk::default();
+        for entry in &entries {
+            let mut places: Vec<usize> = entry.char_indices().map(|(at, _)| at).collect();
+            places.push(entry.len());
+            talk.assist(entry, places[cut.index(places.len())]);
+            let _ = talk.enter(entry);
+            prop_assert!(!talk.prompt().is_empty());
+        }
+    }
+}
+
+proptest! {
     #![proptest_config(config(600))]
 
     #[test]

@@ -172,3 +172,34 @@ pub fn soup() -> impl Strategy<Value = String> {
     let pieces = prop::collection::vec((word(), joint), 0..60);
     pieces.prop_map(|pieces| pieces.into_iter().map(|(word, joint)| word + joint).collect())
 }
+
+/// What is typed at the prompt: right, torn, or a heap of words.
+pub fn entry() -> impl Strategy<Value = String> {
+    let usual = vec![
+        "z = 1.1",
+        "x = D_C(z)",
+        "that*2",
+        "assume concordance",
+        "model m = flat with H0 = 70 km/s/Mpc, Ωm = 1",
+        "x under m",
+        "f(a) = a^2 + a",
+        "f(3)",
+        "table z = 1 .. 3 every 1: z, f(z)",
+        "claim: z is 1.1",
+        "integral(f(t), t = 0 .. z)",
+        "x = x + 1 Mpc",
+        "explain x",
+        "1 beam = 3e-4 sr",
+        "tally galaxy",
+        "help D_L",
+        "given z = 2",
+        "result x",
+        "x [pMpc]",
+        "D_C(z) + D_A(z)",
+    ];
+    prop_oneof![
+        4 => prop::sample::select(usual).prop_map(String::from),
+        1 => statement(),
+        1 => soup(),
+    ]
+}
