@@ -112,22 +112,23 @@ fn entries(recorded: &str) -> Vec<String> {
     entries
 }
 
-/// The first lines in which two texts differ.
+/// What differs between two texts: the lines between their common beginning
+/// and their common end.
 fn difference(recorded: &str, replayed: &str) -> String {
-    let mut text = String::new();
-    let (mut old, mut new) = (recorded.lines(), replayed.lines());
-    loop {
-        match (old.next(), new.next()) {
-            (None, None) => return text,
-            (one, other) if one == other => {}
-            (one, other) => {
-                let _ = writeln!(
-                    text,
-                    "- {}\n+ {}",
-                    one.unwrap_or("(end)"),
-                    other.unwrap_or("(end)")
-                );
-            }
-        }
-    }
+    let (old, new): (Vec<&str>, Vec<&str>) = (recorded.lines().collect(), replayed.lines().collect());
+    let same = old
+        .iter()
+        .zip(&new)
+        .take_while(|(one, other)| one == other)
+        .count();
+    let (old, new) = (&old[same..], &new[same..]);
+    let backwards = old.iter().rev().zip(new.iter().rev());
+    let end = backwards.take_while(|(one, other)| one == other).count();
+    let lines = |sign: &str, lines: &[&str]| -> String {
+        lines[..lines.len() - end]
+            .iter()
+            .map(|line| format!("{sign} {line}\n"))
+            .collect()
+    };
+    format!("line {}:\n{}{}", same + 1, lines("-", old), lines("+", new))
 }
