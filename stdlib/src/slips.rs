@@ -27,6 +27,9 @@ pub struct Slip {
     pub weight: f64,
     /// The dimensions of a result in which it can have been made.
     pub befalls: fn(&Dimension) -> bool,
+    /// Functions, of which the expression calls one; any expression where
+    /// there are none.
+    pub functions: &'static [&'static str],
     /// What it does.
     pub mistake: Mistake,
 }
@@ -66,6 +69,8 @@ pub enum Mistake {
     Factor(f64),
     /// Times a number, once for each power of a generator in the dimension.
     FactorPer(Generator, f64),
+    /// The sign of what stands beside 1 in the exponent of (1+z).
+    ExponentSign,
     /// A number added, in SI.
     Shift(f64),
     /// The number quoted is a power of what it should be, in the unit quoted.
@@ -144,11 +149,17 @@ mod tests {
     fn every_function_that_is_mistaken_is_in_the_library() {
         let known = |name: &str| entries().any(|entry| entry.name == name);
         for slip in slips() {
-            match slip.mistake {
-                Mistake::Function { of, instead } => assert!(known(of) && known(instead), "{}", slip.key),
-                Mistake::Formula { of, .. } => assert!(known(of), "{}", slip.key),
-                _ => {}
-            }
+            let names = if let Mistake::Function { of, instead } = slip.mistake {
+                vec![of, instead]
+            } else if let Mistake::Formula { of, .. } = slip.mistake {
+                vec![of]
+            } else {
+                Vec::new()
+            };
+            assert!(names.into_iter().all(known), "{}", slip.key);
+            let written = |name: &&str| crate::prelude::written().iter().any(|one| one.name == *name);
+            let any = slip.functions.iter().all(|name| known(name) || written(name));
+            assert!(any, "{}: {:?}", slip.key, slip.functions);
         }
     }
 

@@ -93,6 +93,11 @@ fn refused(output: &Output, words: &str) {
     assert!(output.stdout.is_empty(), "{}", stdout(output));
 }
 
+fn keys(value: &Value) -> Vec<String> {
+    let object = value.as_object().expect("an object");
+    object.keys().cloned().collect()
+}
+
 fn json(output: &Output) -> Value {
     let text = stdout(output);
     serde_json::from_str(&text).unwrap_or_else(|error| panic!("{error}\n{text}\n{}", stderr(output)))
@@ -391,12 +396,6 @@ unused = 2
 ";
     let path = sheet(&folder, text);
     let value = json(&run(&[&path, "--as", "json"]));
-    let keys = |value: &Value| -> Vec<String> {
-        value
-            .as_object()
-            .map(|object| object.keys().cloned().collect())
-            .unwrap_or_default()
-    };
     assert_eq!(
         keys(&value),
         [
@@ -438,6 +437,48 @@ unused = 2
     assert_eq!(value["tables"][0]["rows"][2], serde_json::json!([1.0, 2.0]));
     assert_eq!(value["warnings"][0]["code"], "unused-value");
     assert_eq!(value["errors"], serde_json::json!([]));
+}
+
+#[test]
+fn the_referee_judges_the_claims_of_all_sheets_and_nothing_else() {
+    let folder = folder();
+    let right = sheet(&folder, "claim \"abstract\": 2 + 2 is 4\n");
+    let path = folder.path().join("wrong.zij");
+    let text = "table \"t.csv\" x = 0 .. 2 every 1: x\n\
+                claim \"sec. 1\": D_C(1.2) under planck2018 is 5012 Mpc\nclaim: 1 < 2\n";
+    std::fs::write(&path, text).expect("written");
+    let wrong = path.to_str().expect("a path").to_owned();
+
+    assert_eq!(status(&run(&["referee", &right])), 0);
+    let output = run(&["referee", &right, &wrong]);
+    assert_eq!(status(&output), 1);
+    assert!(
+        stdout(&output).contains("3 claims: 2 agree, 1 disagrees"),
+        "{}",
+        stdout(&output)
+    );
+    assert!(!folder.path().join("t.csv").exists(), "no table is written");
+
+    let value = json(&run(&["referee", "--as", "json", &right, &wrong]));
+    assert_eq!(keys(&value), ["zij", "sheets", "totals"]);
+    let sheet = ["sheet", "model", "claims", "warnings", "errors"];
+    assert_eq!(keys(&value["sheets"][1]), sheet);
+    let totals = ["claims", "agree", "disagree", "undecided", "explained"];
+    assert_eq!(keys(&value["totals"]), totals);
+    let markdown = run(&["referee", "--as", "markdown", &wrong]);
+    assert!(stdout(&markdown).contains("**disagrees**"));
+    assert_eq!(stderr(&markdown), "");
+}
+
+#[test]
+fn the_referee_goes_on_past_what_it_cannot_read() {
+    let folder = folder();
+    let right = sheet(&folder, "claim: 2 + 2 is 4\n");
+    let missing = folder.path().join("missing.zij");
+    let output = run(&["referee", missing.to_str().expect("a path"), &right]);
+    assert_eq!(status(&output), 2);
+    assert!(stdout(&output).contains("1 claim: 1 agrees"));
+    refused(&run(&["referee", &right, "--as", "csv"]), "json");
 }
 
 #[test]

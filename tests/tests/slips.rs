@@ -168,7 +168,12 @@ const PLANTS: &[Plant] = &[
         "Msun/kpc^3",
         "critical_density(z)*Ωm(z)",
     ),
-    plant("extra-1+z", "observed_duration(21.7 d, z)", "d", "21.7 d*(1+z)^2"),
+    plant(
+        "observed-for-rest",
+        "observed_duration(21.7 d, z)",
+        "d",
+        "21.7 d*(1+z)^2",
+    ),
     plant(
         "dropped-1+z",
         "burst_energy(3.1 Jy ms, 1.4 GHz, z)",
@@ -252,13 +257,19 @@ const PLANTS: &[Plant] = &[
         "no-radiation",
         "age(1000*z)",
         "Myr",
-        ("planck2018", "flat with H0 = 67.36 km/s/Mpc, Ωm = 0.3151918580"),
+        (
+            "planck2018",
+            "flat with H0 = 67.36 km/s/Mpc, Ωm = (Ωm under planck2018)",
+        ),
     ),
     model(
         "no-radiation",
         "particle_horizon()",
         "Gly",
-        ("planck2018", "flat with H0 = 67.36 km/s/Mpc, Ωm = 0.3151918580"),
+        (
+            "planck2018",
+            "flat with H0 = 67.36 km/s/Mpc, Ωm = (Ωm under planck2018)",
+        ),
     ),
     model(
         "other-H0",

@@ -57,6 +57,8 @@ pub struct Suspect {
     pub factor: f64,
     /// Its dimension.
     pub dimension: Dimension,
+    /// The functions written in the language that it rests on.
+    pub functions: Vec<String>,
     /// The computed value, in that unit.
     pub computed: f64,
     /// The quoted value, in that unit.
@@ -67,6 +69,8 @@ pub struct Suspect {
     pub allowance: Allowance,
     /// What the digits allow, where that is less.
     pub digits: Allowance,
+    /// Whether the digits stand alone, without an uncertainty.
+    pub exact: bool,
 }
 
 /// A named value that a claim may rest on.

@@ -119,7 +119,7 @@ fn in_text(reports: &[Report], look: &Look) -> String {
 }
 
 fn sheet_lines(report: &Report, look: &Look) -> String {
-    let mut head = look.paint(Tone::Strong, sheet_name(report));
+    let mut head = look.paint(Tone::Strong, &look::harmless(sheet_name(report)));
     if let Some(model) = report.model.as_ref().filter(|model| model.used) {
         let default = if model.by_default {
             ", which it leaves to be assumed"
@@ -140,7 +140,10 @@ fn sheet_lines(report: &Report, look: &Look) -> String {
         } else {
             place
         };
-        lines.push_str(&format!("  {}\n", look.paint(Tone::Strong, place)));
+        lines.push_str(&format!(
+            "  {}\n",
+            look.paint(Tone::Strong, &look::harmless(&one_line(place)))
+        ));
         for claim in claims {
             lines.push_str(&claim_lines(claim, width, look));
         }
@@ -156,7 +159,7 @@ fn claim_lines(claim: &ClaimReport, width: usize, look: &Look) -> String {
     };
     let verdict = look::pad(&look.paint(tone, word), BELOW - INDENT);
     let head = format!("{}{verdict}", " ".repeat(INDENT));
-    let statement = one_line(&claim.source);
+    let statement = look::harmless(&one_line(&claim.source));
     let value = look.paint(Tone::Faint, &computed(claim, look));
     let line = format!("{head}{}  {value}", look::pad(&statement, width));
     let mut lines = if look::width(&line) <= look.width {

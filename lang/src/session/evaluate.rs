@@ -516,6 +516,14 @@ fn judge(
     allowed
 }
 
+/// The library's functions written in the language that a claim rests on.
+fn functions(task: &ClaimTask, checker: &Checker) -> Vec<String> {
+    let rests_on = checker.environment.closure(&task.rests_on).into_iter();
+    let bindings = rests_on.map(|id| checker.environment.binding(id));
+    let written = bindings.filter(|binding| binding.space == Space::LibraryFunction);
+    written.map(|binding| binding.name.to_string()).collect()
+}
+
 /// A claim whose slip is to be looked for: a number that was written and
 /// disagrees.
 fn suspect(
@@ -550,7 +558,9 @@ fn suspect(
         dimension: checker.settled(&task.face.form).library_part(),
         computed: *computed,
         quoted,
+        functions: functions(task, checker),
         text: number.number.text.as_str().into(),
+        exact: number.number.uncertainty.is_none(),
         allowance,
         digits: Allowance {
             below: digits.below * unit,

@@ -34,8 +34,19 @@ fn has_mass(dimension: &Dimension) -> bool {
     power_of(dimension, Generator::Mass) != 0
 }
 
+fn is_wave_number(dimension: &Dimension) -> bool {
+    let others = [
+        Generator::Mass,
+        Generator::Time,
+        Generator::Temperature,
+        Generator::Angle,
+    ];
+    power_of(dimension, Generator::Length) == -1
+        && others.iter().all(|other| power_of(dimension, *other) == 0)
+}
+
 fn takes_h(dimension: &Dimension) -> bool {
-    (has_length(dimension) || has_mass(dimension)) && !is_speed(dimension)
+    (has_length(dimension) || has_mass(dimension)) && !is_speed(dimension) && !is_wave_number(dimension)
 }
 
 fn has_angle(dimension: &Dimension) -> bool {
@@ -68,6 +79,7 @@ const fn slip(
         about,
         weight,
         befalls,
+        functions: &[],
         mistake,
     }
 }
@@ -82,6 +94,24 @@ const fn times(
     slip(key, about, weight, befalls, Mistake::Factor(factor))
 }
 
+/// A slip that is made with certain functions alone.
+const fn with(
+    key: &'static str,
+    about: &'static str,
+    weight: f64,
+    functions: &'static [&'static str],
+    mistake: Mistake,
+) -> Slip {
+    Slip {
+        key,
+        about,
+        weight,
+        befalls: anything,
+        functions,
+        mistake,
+    }
+}
+
 const fn stretch(key: &'static str, about: &'static str, weight: f64, power: i32) -> Slip {
     slip(key, about, weight, anything, Mistake::Stretch(power))
 }
@@ -93,6 +123,31 @@ const fn little_h(key: &'static str, about: &'static str, weight: f64, power: i3
 const fn shift(about: &'static str, weight: f64, by: f64) -> Slip {
     slip("AB-for-Vega", about, weight, magnitude, Mistake::Shift(by))
 }
+
+/// Functions in which a source is seen with its time and its waves stretched.
+const SPECTRA: &[&str] = &[
+    "observed_wavelength",
+    "emitted_wavelength",
+    "observed_frequency",
+    "emitted_frequency",
+    "observed_duration",
+    "emitted_duration",
+    "redshift_of_wavelength",
+    "redshift_of_frequency",
+];
+const SIRENS: &[&str] = &["detector_frame_mass", "source_frame_mass", "chirp_mass"];
+const SPECTRAL_INDEX: &[&str] = &[
+    "luminosity_per_frequency",
+    "flux_density_of",
+    "luminosity_per_wavelength",
+    "flux_per_wavelength_of",
+];
+const MULTIPOLES: &[&str] = &[
+    "acoustic_scale",
+    "transverse_wave_number",
+    "line_of_sight_wave_number",
+    "wavelength_of_wave_number",
+];
 
 /// Blanton & Roweis 2007, AJ 133, 734, table 1: AB minus Vega.
 const V: f64 = 0.02;
@@ -135,6 +190,69 @@ pub static SLIPS: &[Slip] = &[
         "four factors (1+z) too many, the dimming of a surface",
         5.0,
         4,
+    ),
+    with(
+        "rest-for-observed",
+        "the rest frame in place of the observed one",
+        25.0,
+        SPECTRA,
+        Mistake::Stretch(-1),
+    ),
+    with(
+        "observed-for-rest",
+        "the observed frame in place of the rest frame",
+        25.0,
+        SPECTRA,
+        Mistake::Stretch(1),
+    ),
+    with(
+        "detector-for-source",
+        "a mass in the frame of the detector in place of the source's",
+        25.0,
+        SIRENS,
+        Mistake::Stretch(1),
+    ),
+    with(
+        "source-for-detector",
+        "a mass in the frame of the source in place of the detector's",
+        25.0,
+        SIRENS,
+        Mistake::Stretch(-1),
+    ),
+    with(
+        "spectral-index-sign",
+        "the spectral index with the other sign",
+        20.0,
+        SPECTRAL_INDEX,
+        Mistake::ExponentSign,
+    ),
+    with(
+        "ell-half",
+        "2π over an angle or a length in place of π",
+        15.0,
+        MULTIPOLES,
+        Mistake::Factor(2.0),
+    ),
+    with(
+        "ell-half",
+        "π over an angle or a length in place of 2π",
+        15.0,
+        MULTIPOLES,
+        Mistake::Factor(0.5),
+    ),
+    slip(
+        "k-in-h",
+        "1/Mpc under the name of h/Mpc",
+        20.0,
+        is_wave_number,
+        Mistake::LittleH(1),
+    ),
+    slip(
+        "k-in-h",
+        "h/Mpc under the name of 1/Mpc",
+        20.0,
+        is_wave_number,
+        Mistake::LittleH(-1),
     ),
     little_h(
         "h-dropped",

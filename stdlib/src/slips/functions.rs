@@ -19,6 +19,7 @@ const fn swap(
         about,
         weight,
         befalls: anything,
+        functions: &[],
         mistake: Mistake::Function { of, instead },
     }
 }
@@ -35,6 +36,7 @@ const fn formula(
         about,
         weight,
         befalls: anything,
+        functions: &[],
         mistake: Mistake::Formula {
             of,
             arguments,

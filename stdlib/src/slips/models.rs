@@ -11,6 +11,7 @@ const fn slip(key: &'static str, about: &'static str, weight: f64, mistake: Mist
         about,
         weight,
         befalls: anything,
+        functions: &[],
         mistake,
     }
 }

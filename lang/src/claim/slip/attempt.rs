@@ -8,6 +8,7 @@ use crate::eval::Value;
 use crate::program::{ModelNode, NodeId, Op, Program};
 use rustc_hash::FxHashSet;
 use std::sync::Arc;
+use zij_stdlib::catalogue::Argument;
 use zij_stdlib::dimension::{Dimension, Generator};
 use zij_stdlib::model::{Model, ParameterId, Setting};
 use zij_stdlib::slips::{self, Algebra, Mistake, Other, Slip};
@@ -40,6 +41,16 @@ enum Gives {
 }
 
 impl Attempt {
+    fn of(slip: &'static Slip, gives: Gives) -> Attempt {
+        Attempt {
+            key: slip.key,
+            about: slip.about.into(),
+            weight: slip.weight,
+            factor: None,
+            gives,
+        }
+    }
+
     /// The mistaken value in the unit of the claim.
     pub fn value(&self, suspect: &Suspect, node: &mut impl FnMut(NodeId) -> Option<f64>) -> Option<f64> {
         match self.gives {
@@ -61,6 +72,7 @@ impl Attempt {
 }
 
 /// What a claim's expression has in it.
+#[derive(Default)]
 struct Expression {
     cone: Vec<NodeId>,
     models: Vec<(NodeId, Arc<Model>)>,
@@ -74,59 +86,51 @@ struct Expression {
 /// Every slip of the catalogue that can befall this claim.
 pub(super) fn attempts(scene: &mut Scene<'_, '_>, scratch: &mut Program, suspect: &Suspect) -> Vec<Attempt> {
     let expression = read(scene, suspect);
-    let mut all = Vec::new();
-    for slip in slips::slips().filter(|slip| (slip.befalls)(&suspect.dimension)) {
-        make(slip, scene, scratch, suspect, &expression, &mut all);
-    }
-    all
+    let met = |slip: &Slip| {
+        let called = |name: &&str| {
+            expression.called.iter().any(|(known, _)| known == name)
+                || suspect.functions.iter().any(|known| known == name)
+        };
+        slip.functions.is_empty() || slip.functions.iter().any(called)
+    };
+    slips::slips()
+        .filter(|slip| (slip.befalls)(&suspect.dimension) && met(slip))
+        .flat_map(|slip| make(slip, scene, scratch, suspect, &expression))
+        .collect()
 }
 
 fn read(scene: &mut Scene<'_, '_>, suspect: &Suspect) -> Expression {
     let cone = rewrite::cone(scene.program, suspect.node, MAX_CONE).unwrap_or_default();
-    let mut expression = Expression {
-        cone: Vec::new(),
-        models: Vec::new(),
-        redshifts: Vec::new(),
-        called: FxHashSet::default(),
-        named: Vec::new(),
-    };
-    let mut repeatable = true;
+    let mut expression = Expression::default();
+    let mut rows = 0;
     for id in &cone {
         let op = &scene.program.main.nodes[*id as usize].op;
-        match op {
-            Op::Model(_) => {
-                if let Ok(Value::Model(model)) = scene.evaluator.value(*id) {
-                    expression.models.push((*id, model));
-                }
-            }
-            Op::Column(number) => {
-                let rows = scene
+        if let Op::Column(number) = op {
+            rows = rows.max(
+                scene
                     .program
                     .columns
                     .get(*number as usize)
-                    .map_or(0, |rows| rows.len());
-                repeatable &= rows <= MAX_ROWS;
-            }
-            _ => {}
+                    .map_or(0, |rows| rows.len()),
+            );
+        }
+        if let (Op::Model(_), Ok(Value::Model(model))) = (op, scene.evaluator.value(*id)) {
+            expression.models.push((*id, model));
         }
         rewrite::calls(scene.program, op, &mut |entry, count| {
             expression.called.insert((entry.name, count));
         });
-        let candidates = redshift_nodes(scene, op);
-        for node in candidates {
-            note_redshift(scene, node, &mut expression.redshifts);
+        for node in redshift_nodes(scene.program, op) {
+            if let Some(z) = number(scene, node) {
+                note(z, &mut expression.redshifts);
+            }
         }
     }
     for (place, named) in scene.named.iter().enumerate() {
         if cone.binary_search(&named.node).is_err() {
             continue;
         }
-        let Some(value) = scene
-            .evaluator
-            .value(named.node)
-            .ok()
-            .and_then(|value| value.scalar())
-        else {
+        let Some(value) = number(scene, named.node) else {
             continue;
         };
         expression.named.push((place, value / named.factor));
@@ -135,57 +139,54 @@ fn read(scene: &mut Scene<'_, '_>, suspect: &Suspect) -> Expression {
         }
     }
     expression.redshifts.truncate(MAX_REDSHIFTS);
-    if repeatable {
+    if rows <= MAX_ROWS {
         expression.cone = cone;
     }
     expression
 }
 
-/// Nodes that stand where a redshift does: in a call, in `1 + z`, at the end
-/// of a range whose variable is one.
-fn redshift_nodes(scene: &Scene<'_, '_>, op: &Op) -> Vec<NodeId> {
-    match op {
-        Op::Call(entry, _, arguments) => entry
-            .arguments
-            .iter()
-            .zip(arguments)
-            .filter(|(argument, _)| slips::is_redshift(argument.name))
-            .map(|(_, node)| *node)
-            .collect(),
-        Op::Binary(BinaryOp::Add, a, b) => {
-            let is_one = |node: &NodeId| matches!(scene.program.main.nodes[*node as usize].op, Op::Constant(value) if value == 1.0);
-            [(a, b), (b, a)]
-                .into_iter()
-                .filter(|(one, _)| is_one(one))
-                .map(|(_, other)| *other)
-                .take(1)
-                .collect()
-        }
-        Op::Bind(bind) => {
-            let body = &scene.program.bodies[bind.body as usize];
-            let over_z = body.nodes.iter().any(|node| match &node.op {
-                Op::Call(entry, _, arguments) => {
-                    entry.arguments.iter().zip(arguments).any(|(argument, node)| {
-                        slips::is_redshift(argument.name)
-                            && matches!(body.nodes[*node as usize].op, Op::Input(0))
-                    })
-                }
-                _ => false,
-            });
-            if over_z {
-                vec![bind.from, bind.to]
-            } else {
-                Vec::new()
-            }
-        }
-        _ => Vec::new(),
-    }
+fn number(scene: &mut Scene<'_, '_>, node: NodeId) -> Option<f64> {
+    scene.evaluator.value(node).ok()?.scalar()
 }
 
-fn note_redshift(scene: &mut Scene<'_, '_>, node: NodeId, known: &mut Vec<f64>) {
-    if let Some(z) = scene.evaluator.value(node).ok().and_then(|value| value.scalar()) {
-        note(z, known);
+/// Nodes that stand where a redshift does: in a call, in `1 + z`, at the ends
+/// of a range whose variable is one.
+fn redshift_nodes(program: &Program, op: &Op) -> Vec<NodeId> {
+    let is_one =
+        |node: NodeId| matches!(program.main.nodes[node as usize].op, Op::Constant(value) if value == 1.0);
+    if let Op::Binary(BinaryOp::Add, a, b) = *op {
+        return match (is_one(a), is_one(b)) {
+            (true, _) => vec![b],
+            (false, true) => vec![a],
+            (false, false) => Vec::new(),
+        };
     }
+    if let Op::Bind(bind) = op {
+        let body = &program.bodies[bind.body as usize].nodes;
+        let is_variable = |node: NodeId| matches!(body[node as usize].op, Op::Input(0));
+        let over_z = body
+            .iter()
+            .any(|node| redshift_arguments(&node.op).any(is_variable));
+        return if over_z {
+            vec![bind.from, bind.to]
+        } else {
+            Vec::new()
+        };
+    }
+    redshift_arguments(op).collect()
+}
+
+/// The arguments of a call that are redshifts.
+fn redshift_arguments(op: &Op) -> impl Iterator<Item = NodeId> + '_ {
+    let (takes, given): (&[Argument], &[NodeId]) = if let Op::Call(entry, _, arguments) = op {
+        (entry.arguments, arguments)
+    } else {
+        (&[], &[])
+    };
+    let redshifts = takes.iter().zip(given);
+    redshifts
+        .filter(|(argument, _)| slips::is_redshift(argument.name))
+        .map(|(_, node)| *node)
 }
 
 fn note(z: f64, known: &mut Vec<f64>) {
@@ -201,156 +202,144 @@ fn make(
     scratch: &mut Program,
     suspect: &Suspect,
     expression: &Expression,
-    all: &mut Vec<Attempt>,
-) {
-    let mut push = |about: String, weight: f64, factor: Option<f64>, gives: Gives| {
-        all.push(Attempt {
-            key: slip.key,
-            about,
-            weight,
-            factor,
-            gives,
-        });
+) -> Vec<Attempt> {
+    let rewritten = |node: Option<NodeId>| -> Vec<Attempt> {
+        let attempt = node.map(|node| Attempt::of(slip, Gives::Node(node)));
+        attempt.into_iter().collect()
     };
-    let about = || slip.about.to_owned();
-    let root = suspect.node;
-    let cone = &expression.cone;
+    let (cone, root) = (&expression.cone, suspect.node);
     match slip.mistake {
         Mistake::Function { of, instead } => {
-            let called = expression.called.iter().any(|(name, _)| *name == of);
-            let Some(instead) = library::function(instead).filter(|_| called) else {
-                return;
-            };
-            let swap = Swap {
+            let swap = library::function(instead).map(|instead| Swap {
                 of,
                 arguments: None,
                 instead,
-            };
-            if let Some(node) = rewrite::swapped(scratch, cone, root, swap) {
-                push(about(), slip.weight, None, Gives::Node(node));
-            }
+            });
+            rewritten(swap.and_then(|swap| swapped(scratch, expression, root, swap)))
         }
         Mistake::Formula {
             of,
             arguments,
             instead,
         } => {
-            if !expression.called.contains(&(of, arguments)) {
-                return;
-            }
             let swap = Swap {
                 of,
                 arguments: Some(arguments),
                 instead,
             };
-            if let Some(node) = rewrite::swapped(scratch, cone, root, swap) {
-                push(about(), slip.weight, None, Gives::Node(node));
-            }
+            rewritten(swapped(scratch, expression, root, swap))
         }
-        Mistake::Model(change) => {
-            if let Some(node) = other_model(scratch, suspect, expression, |_, model| change(model)) {
-                push(about(), slip.weight, None, Gives::Node(node));
-            }
-        }
+        Mistake::Model(change) => rewritten(other_model(scratch, suspect, expression, change)),
         Mistake::Parameter(parameter, value) => {
-            if let Some(node) = with_parameter(scratch, suspect, expression, parameter, value) {
-                push(about(), slip.weight, None, Gives::Node(node));
-            }
+            rewritten(with_parameter(scratch, suspect, expression, parameter, value))
         }
-        Mistake::Base(base) => {
-            let change = |_: NodeId, model: &Model| {
-                (model.base().name != base.name).then_some(Other {
-                    base,
-                    settings: Vec::new(),
-                })
-            };
-            if let Some(node) = other_model(scratch, suspect, expression, change) {
-                push(about(), slip.weight, None, Gives::Node(node));
-            }
-        }
-        Mistake::Stretch(power) => {
-            stretches(
-                suspect,
-                expression,
-                power,
-                &mut |about_z, share, factor, gives| {
-                    push(
-                        format!("{}{about_z}", slip.about),
-                        slip.weight * share,
-                        factor,
-                        gives,
-                    );
-                },
-            );
-        }
+        Mistake::Base(base) => rewritten(other_model(scratch, suspect, expression, |model| {
+            let settings = Vec::new();
+            (model.base().name != base.name).then_some(Other { base, settings })
+        })),
+        Mistake::ExponentSign => rewritten(rewrite::with_changes(scratch, cone, root, turned_exponent)),
+        Mistake::Rounded(digits) => rounded(slip, scene, scratch, suspect, expression, digits),
+        Mistake::Stretch(power) => stretches(slip, suspect, expression, power),
         Mistake::StretchOfLengths(power) => {
             let lengths = whole_power(&suspect.dimension, Generator::Length);
-            stretches(
-                suspect,
-                expression,
-                power * lengths,
-                &mut |about_z, share, factor, gives| {
-                    push(
-                        format!("{}{about_z}", slip.about),
-                        slip.weight * share,
-                        factor,
-                        gives,
-                    );
-                },
-            );
+            stretches(slip, suspect, expression, power * lengths)
         }
         Mistake::LittleH(power) => {
-            if let Some(h) = little_h(scene, expression, suspect) {
-                let (factor, gives) = multiplied(suspect, libm::pow(h, f64::from(power)));
-                push(about(), slip.weight, factor, gives);
-            }
+            let h = little_h(scene, expression, suspect);
+            let attempt = h.map(|h| multiplied(slip, suspect, libm::pow(h, f64::from(power))));
+            attempt.into_iter().collect()
         }
-        Mistake::Factor(factor) => {
-            let gives = Gives::Number(suspect.computed * factor);
-            push(about(), slip.weight, Some(factor), gives);
-        }
+        Mistake::Factor(factor) => vec![multiplied(slip, suspect, factor)],
         Mistake::FactorPer(generator, factor) => {
             let power = whole_power(&suspect.dimension, generator);
-            let factor = libm::pow(factor, f64::from(power));
-            push(
-                about(),
-                slip.weight,
-                Some(factor),
-                Gives::Number(suspect.computed * factor),
-            );
+            vec![multiplied(slip, suspect, libm::pow(factor, f64::from(power)))]
         }
         Mistake::Shift(by) => {
-            let gives = Gives::Number(suspect.computed + by / suspect.factor);
-            push(about(), slip.weight, None, gives);
+            let value = suspect.computed + by / suspect.factor;
+            vec![Attempt::of(slip, Gives::Number(value))]
         }
         Mistake::Power(algebra) => {
-            let x = suspect.computed;
-            let value = match algebra {
-                Algebra::Inverse => 1.0 / x,
-                Algebra::Root => libm::sqrt(x),
-                Algebra::Square => x * x,
-            };
-            push(about(), slip.weight, None, Gives::Number(value));
+            let value = raised(suspect.computed, algebra);
+            vec![Attempt::of(slip, Gives::Number(value))]
         }
         // Compared with the quoted digits, not made in the expression.
-        Mistake::Digits(_) => {}
-        Mistake::Rounded(digits) => {
-            let share = 1.0 / expression.named.len().max(1) as f64;
-            for (place, value) in &expression.named {
-                let named = &scene.named[*place];
-                let rounded = to_digits(*value, digits);
-                if rounded == *value || named.node == root {
-                    continue;
-                }
-                let op = Op::Constant(rounded * named.factor);
-                let change = |_: &mut Program, id: NodeId| (id == named.node).then(|| op.clone());
-                if let Some(node) = rewrite::with_changes(scratch, cone, root, change) {
-                    let about = format!("{} rounded to {rounded} before it was used", named.name);
-                    push(about, slip.weight * share, None, Gives::Node(node));
-                }
-            }
+        Mistake::Digits(_) => Vec::new(),
+    }
+}
+
+fn raised(value: f64, algebra: Algebra) -> f64 {
+    match algebra {
+        Algebra::Inverse => 1.0 / value,
+        Algebra::Root => libm::sqrt(value),
+        Algebra::Square => value * value,
+    }
+}
+
+fn swapped(scratch: &mut Program, expression: &Expression, root: NodeId, swap: Swap) -> Option<NodeId> {
+    let is_meant = |(name, count): &(&str, usize)| {
+        *name == swap.of && swap.arguments.is_none_or(|arguments| arguments == *count)
+    };
+    if !expression.called.iter().any(is_meant) {
+        return None;
+    }
+    rewrite::swapped(scratch, &expression.cone, root, swap)
+}
+
+/// Each named value rounded, one at a time.
+fn rounded(
+    slip: &'static Slip,
+    scene: &Scene<'_, '_>,
+    scratch: &mut Program,
+    suspect: &Suspect,
+    expression: &Expression,
+    digits: u32,
+) -> Vec<Attempt> {
+    let share = 1.0 / expression.named.len().max(1) as f64;
+    let mut attempts = Vec::new();
+    for (place, value) in &expression.named {
+        let named = &scene.named[*place];
+        let rounded = to_digits(*value, digits);
+        if rounded == *value || named.node == suspect.node {
+            continue;
+        }
+        let op = Op::Constant(rounded * named.factor);
+        let change = |_: &mut Program, id: NodeId| (id == named.node).then(|| op.clone());
+        if let Some(node) = rewrite::with_changes(scratch, &expression.cone, suspect.node, change) {
+            attempts.push(Attempt {
+                about: format!("{} rounded to {rounded} before it was used", named.name),
+                weight: slip.weight * share,
+                ..Attempt::of(slip, Gives::Node(node))
+            });
         }
     }
+    attempts
+}
+
+/// A power with the sign turned of what stands beside 1 in its exponent.
+fn turned_exponent(scratch: &mut Program, id: NodeId) -> Option<Op> {
+    let node = |id: NodeId| &scratch.main.nodes[id as usize].op;
+    let is_one = |id: NodeId| matches!(node(id), Op::Constant(value) if *value == 1.0);
+    let Op::Binary(BinaryOp::Power, base, exponent) = *node(id) else {
+        return None;
+    };
+    let Op::Binary(op, a, b) = *node(exponent) else {
+        return None;
+    };
+    let (one_first, one_last) = (is_one(a), is_one(b));
+    let turned = if op == BinaryOp::Subtract && one_last {
+        let negative = rewrite::plain(scratch, Op::Negate(a), false);
+        Op::Binary(BinaryOp::Subtract, negative, b)
+    } else if op == BinaryOp::Subtract && one_first {
+        Op::Binary(BinaryOp::Add, a, b)
+    } else if op == BinaryOp::Add && one_first {
+        Op::Binary(BinaryOp::Subtract, a, b)
+    } else if op == BinaryOp::Add && one_last {
+        Op::Binary(BinaryOp::Subtract, b, a)
+    } else {
+        return None;
+    };
+    let turned = rewrite::plain(scratch, turned, false);
+    Some(Op::Binary(BinaryOp::Power, base, turned))
 }
 
 /// A number with so many significant digits.
@@ -365,32 +354,39 @@ fn whole_power(dimension: &Dimension, generator: Generator) -> i32 {
 }
 
 /// The computed value times a factor; a magnitude is changed by it.
-fn multiplied(suspect: &Suspect, factor: f64) -> (Option<f64>, Gives) {
-    if whole_power(&suspect.dimension, Generator::Magnitude) == 0 {
-        return (Some(factor), Gives::Number(suspect.computed * factor));
+fn multiplied(slip: &'static Slip, suspect: &Suspect, factor: f64) -> Attempt {
+    let is_magnitude = whole_power(&suspect.dimension, Generator::Magnitude) != 0;
+    let by_power = matches!(
+        slip.mistake,
+        Mistake::Stretch(_) | Mistake::StretchOfLengths(_) | Mistake::LittleH(_)
+    );
+    if is_magnitude && by_power {
+        let gives = suspect.computed + 2.5 * libm::log10(factor) / suspect.factor;
+        return Attempt::of(slip, Gives::Number(gives));
     }
-    let gives = suspect.computed + 2.5 * libm::log10(factor) / suspect.factor;
-    (None, Gives::Number(gives))
+    Attempt {
+        factor: Some(factor),
+        ..Attempt::of(slip, Gives::Number(suspect.computed * factor))
+    }
 }
 
 /// The value times a power of (1+z), for each redshift that was met.
-fn stretches(
-    suspect: &Suspect,
-    expression: &Expression,
-    power: i32,
-    push: &mut dyn FnMut(String, f64, Option<f64>, Gives),
-) {
-    let several = expression.redshifts.len() > 1;
-    let share = 1.0 / expression.redshifts.len().max(1) as f64;
-    for z in &expression.redshifts {
-        let (factor, gives) = multiplied(suspect, libm::pow(1.0 + z, f64::from(power)));
-        let about = if several {
+fn stretches(slip: &'static Slip, suspect: &Suspect, expression: &Expression, power: i32) -> Vec<Attempt> {
+    let count = expression.redshifts.len();
+    let stretch = |z: &f64| {
+        let attempt = multiplied(slip, suspect, libm::pow(1.0 + z, f64::from(power)));
+        let which = if count > 1 {
             format!(", with z = {z}")
         } else {
             String::new()
         };
-        push(about, share, factor, gives);
-    }
+        Attempt {
+            about: format!("{}{which}", slip.about),
+            weight: slip.weight / count as f64,
+            ..attempt
+        }
+    };
+    expression.redshifts.iter().map(stretch).collect()
 }
 
 /// h of the model met, or of the one assumed where h is in the unit.
@@ -412,11 +408,11 @@ fn other_model(
     scratch: &mut Program,
     suspect: &Suspect,
     expression: &Expression,
-    change: impl Fn(NodeId, &Model) -> Option<Other>,
+    change: impl Fn(&Model) -> Option<Other>,
 ) -> Option<NodeId> {
     rewrite::with_changes(scratch, &expression.cone, suspect.node, |scratch, id| {
         let (_, model) = expression.models.iter().find(|(node, _)| *node == id)?;
-        let other = change(id, model)?;
+        let other = change(model)?;
         let settings = other
             .settings
             .into_iter()

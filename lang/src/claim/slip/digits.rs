@@ -15,9 +15,11 @@ pub(super) struct Copy {
 
 /// One row for each kind of copying, with the weight of those that fit.
 pub(super) fn fits(suspect: &Suspect) -> Vec<Copy> {
-    let copyings = slips().filter_map(|slip| match slip.mistake {
-        Mistake::Digits(copying) => Some((slip, copying)),
-        _ => None,
+    let copyings = slips().filter_map(|slip| {
+        let Mistake::Digits(copying) = slip.mistake else {
+            return None;
+        };
+        Some((slip, copying))
     });
     copyings
         .map(|(slip, copying)| {
@@ -83,7 +85,7 @@ fn one_wrong(text: &str) -> Vec<String> {
 fn is_truncated(suspect: &Suspect) -> bool {
     let unit = 2.0 * suspect.digits.width();
     let beyond = (suspect.computed - suspect.quoted) * suspect.quoted.signum();
-    0.0 < beyond && beyond < unit
+    suspect.exact && 0.0 < beyond && beyond < unit
 }
 
 #[cfg(test)]

@@ -95,14 +95,13 @@ impl Swap {
 
 /// Whether a function is called in an operation, or in the bodies below it.
 pub(super) fn calls(program: &Program, op: &Op, visit: &mut dyn FnMut(&'static Entry, usize)) {
-    match op {
-        Op::Call(entry, _, arguments) => visit(entry, arguments.len()),
-        Op::Bind(bind) => {
-            for node in &program.bodies[bind.body as usize].nodes {
-                calls(program, &node.op, visit);
-            }
+    if let Op::Call(entry, _, arguments) = op {
+        visit(entry, arguments.len());
+    }
+    if let Op::Bind(bind) = op {
+        for node in &program.bodies[bind.body as usize].nodes {
+            calls(program, &node.op, visit);
         }
-        _ => {}
     }
 }
 
