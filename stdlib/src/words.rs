@@ -296,6 +296,31 @@ fn frame(bare: &Dimension, comoving: Exponent) -> String {
     format!(" ({})", quotient(&over, &under, " times ", " over "))
 }
 
+/// A dimension as a product of base units and little h, `""` for a number.
+#[must_use]
+pub fn in_base_units(dimension: &Dimension) -> String {
+    let h = dimension.exponent(Generator::LittleH);
+    let bare = without_frame(dimension);
+    let units = if bare.is_number() {
+        String::new()
+    } else {
+        base_units(&bare)
+    };
+    match (units.is_empty(), is_some(h)) {
+        (_, false) => units,
+        (true, true) => signed_power("h", h),
+        (false, true) => format!("{units} {}", signed_power("h", h)),
+    }
+}
+
+fn signed_power(word: &str, exponent: Exponent) -> String {
+    match (exponent.numer(), exponent.denom()) {
+        (1, 1) => word.to_owned(),
+        (numerator, 1) => format!("{word}^{numerator}"),
+        (numerator, denominator) => format!("{word}^({numerator}/{denominator})"),
+    }
+}
+
 /// The product of base units: `kg m^2/s^3`.
 fn base_units(bare: &Dimension) -> String {
     let units = BASE_UNITS.map(|(generator, unit)| (unit, bare.exponent(generator)));

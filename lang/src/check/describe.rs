@@ -7,7 +7,7 @@ use super::{BindingId, Checker, Meaning};
 use num_rational::Ratio;
 use smol_str::SmolStr;
 use zij_stdlib::catalogue::Type;
-use zij_stdlib::dimension::{Dimension, Generator};
+use zij_stdlib::dimension::Generator;
 use zij_stdlib::words;
 
 impl Checker {
@@ -134,7 +134,7 @@ impl Checker {
     pub fn unit_text(&self, form: &Form) -> String {
         let rest = form.library_part();
         let usual = words::usual_unit(&rest).filter(|unit| *unit != "1");
-        let mut text = usual.map_or_else(|| base_units(&rest), ToOwned::to_owned);
+        let mut text = usual.map_or_else(|| words::in_base_units(&rest), ToOwned::to_owned);
         for (key, power) in form.parts() {
             if let Some(counted) = self.counted(key, power) {
                 text = if text.is_empty() {
@@ -146,39 +146,6 @@ impl Checker {
         }
         text
     }
-}
-
-/// A dimension as a product of base units: `kg m^2/s^3` as `kg m^2 s^-3`.
-#[must_use]
-pub fn base_units(dimension: &Dimension) -> String {
-    let symbols = [
-        (Generator::Mass, "kg"),
-        (Generator::Length, "m"),
-        (Generator::Time, "s"),
-        (Generator::Current, "A"),
-        (Generator::Temperature, "K"),
-        (Generator::Amount, "mol"),
-        (Generator::LuminousIntensity, "cd"),
-        (Generator::Angle, "rad"),
-        (Generator::Magnitude, "mag"),
-    ];
-    let mut parts: Vec<String> = Vec::new();
-    for (generator, symbol) in symbols {
-        parts.extend(power_text(symbol, dimension.exponent(generator)));
-    }
-    parts.extend(power_text("h", dimension.exponent(Generator::LittleH)));
-    parts.join(" ")
-}
-
-fn power_text(symbol: &str, power: form::Exponent) -> Option<String> {
-    if form::is_zero(power) {
-        return None;
-    }
-    Some(match (*power.numer(), *power.denom()) {
-        (1, 1) => symbol.to_owned(),
-        (numerator, 1) => format!("{symbol}^{numerator}"),
-        (numerator, denominator) => format!("{symbol}^({numerator}/{denominator})"),
-    })
 }
 
 /// The unit of an argument or result of the library in a signature.
