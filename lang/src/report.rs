@@ -190,7 +190,8 @@ impl Report {
     #[must_use]
     pub fn exit_status(&self) -> u8 {
         let disagrees = |item: &Item| matches!(item, Item::Claim(claim) if claim.agrees == Some(false));
-        if self.faulted {
+        let undecided = |item: &Item| matches!(item, Item::Claim(claim) if claim.agrees.is_none());
+        if self.faulted || self.items.iter().any(undecided) {
             3
         } else if self.has_errors() {
             2

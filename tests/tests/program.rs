@@ -300,6 +300,19 @@ fn statuses_tell_how_a_sheet_ended() {
 }
 
 #[test]
+fn a_claim_without_a_verdict_is_no_success() {
+    let folder = folder();
+    for claim in [
+        "{1, 2, 3} is {1, 2, 3} within 1%",
+        "1 is {1, 2} within 10%",
+        "{1, 2} is 1",
+    ] {
+        let output = run(&[&sheet(&folder, &format!("claim: {claim}\n"))]);
+        assert_ne!(status(&output), 0, "{claim}: {}", stdout(&output));
+    }
+}
+
+#[test]
 fn check_evaluates_nothing() {
     let folder = folder();
     let path = sheet(
