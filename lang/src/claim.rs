@@ -38,6 +38,10 @@ impl Allowance {
     /// Whether `computed` is close enough to `quoted`.
     #[must_use]
     pub fn admits(self, quoted: f64, computed: f64) -> bool {
+        // A number too large for its unit is near nothing.
+        if !quoted.is_finite() {
+            return quoted == computed;
+        }
         let grace = GRACE * quoted.abs().max(computed.abs());
         let off = computed - quoted;
         off <= self.above + grace && -off <= self.below + grace
@@ -118,6 +122,12 @@ mod tests {
         let allowance = as_written(&written(&quoted));
         assert!(allowance.admits(46.5, 46.54) && allowance.admits(46.5, 46.45));
         assert!(!allowance.admits(46.5, 46.56) && !allowance.admits(46.5, 46.44));
+    }
+
+    #[test]
+    fn nothing_agrees_with_a_number_too_large_to_hold() {
+        assert!(!Allowance::even(5e299).admits(f64::INFINITY, 13.8));
+        assert!(!Allowance::even(5e299).admits(f64::NAN, 13.8));
     }
 
     #[test]

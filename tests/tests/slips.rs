@@ -661,6 +661,18 @@ fn two_plain_slips_at_once_are_found_where_the_digits_are_enough() {
 }
 
 #[test]
+fn a_function_for_dark_energy_may_have_been_left_out() {
+    let constant = numbers(&run("D_C(1.5) [Mpc] under planck2018\n"))[0];
+    let model = "planck2018 with w(z) = -0.9 + 0.2*z/(1+z)";
+    let claim = format!("claim: D_C(1.5) under ({model}) is {constant:.1} Mpc\n");
+    let judged = judged(&run(&claim));
+    assert_eq!(
+        judged[0].slips.first().map(|slip| slip.0.as_str()),
+        Some("constant-dark-energy")
+    );
+}
+
+#[test]
 fn nothing_is_searched_where_no_number_was_written() {
     let report = run("claim: D_C(1) is above 100 Gpc\nclaim: D_C(1) is 2 * 5 Gpc within 1%\n");
     assert!(
@@ -673,7 +685,7 @@ fn nothing_is_searched_where_no_number_was_written() {
 #[test]
 fn claims_of_series_and_of_hostile_numbers_are_judged_without_slips() {
     let sheet = "claim: {1, 2} is 3\nclaim: 0 * D_C(1) is 5 Mpc\nclaim: D_C(1) is 0 Mpc\n\
-                 claim: D_C(1) is -3 Mpc\nclaim: 1e270 * D_C(1) is 1e-300 Mpc\n";
+                 claim: D_C(1) is -3 Mpc\nclaim: D_C(1) is 1e300 Gly\nclaim: 1e270 * D_C(1) is 1e-300 Mpc\n";
     for one in judged(&run(sheet)) {
         assert_eq!(one.agrees, Some(false));
         assert!(one.slips.iter().all(|slip| slip.1.is_finite()), "{one:?}");

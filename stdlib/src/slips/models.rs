@@ -145,13 +145,16 @@ fn seven_tenths_dark(model: &Model) -> Option<Other> {
 }
 
 fn cosmological_constant(model: &Model) -> Option<Other> {
-    if [id::W0, id::WA]
-        .into_iter()
-        .all(|one| model.quoted(one).is_none())
-    {
-        return None;
-    }
-    same_but(model, vec![number(id::W0, -1.0), number(id::WA, 0.0)])
+    let is_state = |parameter: ParameterId| matches!(parameter, id::W0 | id::WA | id::W);
+    let (state, kept): (Vec<_>, Vec<_>) = model
+        .parameters()
+        .iter()
+        .cloned()
+        .partition(|(parameter, _)| is_state(*parameter));
+    (!state.is_empty()).then(|| Other {
+        base: model.base(),
+        settings: kept,
+    })
 }
 
 fn three_tenths(model: &Model) -> Option<Other> {

@@ -18,6 +18,9 @@ use zij_stdlib::slips::{self, Algebra, Mistake, Other, Slip};
 const MAX_CONE: usize = 2_000;
 /// Rows of data that each mistake may run over.
 const MAX_ROWS: usize = 5_000;
+/// Of the values of a parameter, those of at least this weight are tried where
+/// a model has a function of z in it.
+const PLAUSIBLE: f64 = 6.0;
 /// Redshifts that are tried for powers of (1+z).
 const MAX_REDSHIFTS: usize = 3;
 
@@ -230,6 +233,8 @@ fn make(
             rewritten(swapped(scratch, expression, root, swap))
         }
         Mistake::Model(change) => rewritten(other_model(scratch, suspect, expression, change)),
+        // Each model with a function of z is costly to build.
+        Mistake::Parameter(..) if slip.weight < PLAUSIBLE && has_function(scratch, expression) => Vec::new(),
         Mistake::Parameter(parameter, value) => {
             rewritten(with_parameter(scratch, suspect, expression, parameter, value))
         }
@@ -265,6 +270,12 @@ fn make(
         // Compared with the quoted digits, not made in the expression.
         Mistake::Digits(_) => Vec::new(),
     }
+}
+
+fn has_function(program: &Program, expression: &Expression) -> bool {
+    expression.models.iter().any(|(node, _)| {
+        matches!(&program.main.nodes[*node as usize].op, Op::Model(model) if model.function.is_some())
+    })
 }
 
 fn raised(value: f64, algebra: Algebra) -> f64 {
