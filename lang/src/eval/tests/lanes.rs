@@ -215,9 +215,9 @@ fn a_value_that_is_read_twice_is_computed_once() {
 #[test]
 fn models_vary_along_a_series() {
     // The library's own models are tested where they are; here only that a
-    // model for each element (parameter 0 is H0) reaches its call.
+    // model for each element (parameter 0 is H0, in 1/s) reaches its call.
     let mut main = Builder::main();
-    let h = main.list(&[0.6, 0.7, 0.8]);
+    let h = main.list(&[2.0e-18, 2.2e-18, 2.4e-18]);
     let z = main.list(&[0.0, 1.0, 1.5]);
     let held = main.add(model(&[(0, h)]));
     main.add(Op::Call(&ARRIVAL, Some(held), vec![z]));
