@@ -122,6 +122,10 @@ impl Checker {
     ) -> Option<Option<Arc<Measure>>> {
         let typed = self.infer_with_shared_unit(quoted);
         let mut sound = true;
+        for expr in quoted.iter().filter(|expr| is_list(expr)) {
+            self.report(error::quotes_many(expr.span));
+            sound = false;
+        }
         for (expr, typed) in quoted.iter().zip(&typed) {
             if typed.is_unknown() || subject.kind != Kind::Quantity {
                 sound = sound && !typed.is_unknown();
@@ -179,6 +183,15 @@ impl Checker {
             unit: typed.unit,
             truth: typed.kind == Kind::Truth,
         }
+    }
+}
+
+/// Whether an expression is written as a series.
+fn is_list(expr: &Expr) -> bool {
+    match &expr.kind {
+        ExprKind::Group(inner) => is_list(inner),
+        ExprKind::Series(_) | ExprKind::Quantities(..) => true,
+        _ => false,
     }
 }
 

@@ -437,6 +437,16 @@ pub(super) fn claim_needs_number(span: Span) -> Diagnostic {
         .note("write the number as quoted, or say how close: `within 1%`")
 }
 
+pub(super) fn quotes_many(span: Span) -> Diagnostic {
+    Diagnostic::error(
+        "claim-needs-number",
+        "a claim quotes one number, and this is a series",
+        span,
+        "a series",
+    )
+    .note("a series on the left agrees if each of its values does")
+}
+
 pub(super) fn unlike_tolerance(amount: Span, subject: Span, words: &[String; 2], plain: bool) -> Diagnostic {
     let message = format!(
         "the tolerance is {}, and the claim is about {}",

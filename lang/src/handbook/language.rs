@@ -225,10 +225,19 @@ pub(super) static PAGES: &[LanguagePage] = &[
         example: "tally galaxy\n12000 galaxy / 2 deg^2 [galaxy/arcmin^2]",
     },
     LanguagePage {
-        names: &["correlate", "explain"],
+        names: &["explain"],
         chapter: Chapter::Statements,
-        about: "correlations, and where a value comes from (not yet)",
-        forms: &["correlate A, B by -0.9", "explain EXPR"],
+        about: "where a value comes from",
+        forms: &["explain EXPR"],
+        text: "The expression with its values filled in, what each name in it is, the formulas of the library, the \
+               model and what it leaves out, and the sources of all of it.",
+        example: "explain D_L(1.1) [Gpc]",
+    },
+    LanguagePage {
+        names: &["correlate"],
+        chapter: Chapter::Statements,
+        about: "the correlation of two uncertain inputs (not yet)",
+        forms: &["correlate A, B by -0.9"],
         text: "Read today, computed in a later version.",
         example: "",
     },

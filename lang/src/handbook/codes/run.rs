@@ -14,8 +14,8 @@ pub(super) const PAGES: &[CodePage] = &[
         "overflow",
         "A result is too large for a number.",
         "The largest is 1.8e308; in other units, or as a logarithm, it may fit.",
-        "result y = exp(1000)",
-        "result y = exp(100)",
+        "result y = 1e200 * 1e200",
+        "result y = 1e100 * 1e100",
     ),
     page(
         "domain-fault",
@@ -26,10 +26,10 @@ pub(super) const PAGES: &[CodePage] = &[
     ),
     page(
         "model-fault",
-        "The parameters make no model that can be computed, or none that has what was asked for.",
-        "Some models never had a big bang, some turn around, some end; what does not exist there is not made up.",
-        "result t = age(0) under general with H0 = 70 km/s/Mpc, Ωm = 0.1, ΩΛ = 3",
-        "result t = age(0) under general with H0 = 70 km/s/Mpc, Ωm = 0.3, ΩΛ = 0.7",
+        "A model cannot be built from the values it is given.",
+        "The message says which value, and why: a density below zero, a rate in the wrong unit, a budget that does not close.",
+        "result d = D_C(1) under flat with H0 = 70000000 km/s/Mpc, Ωm = 0.3",
+        "result d = D_C(1) under flat with H0 = 70 km/s/Mpc, Ωm = 0.3",
     ),
     page(
         "never",
