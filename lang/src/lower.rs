@@ -47,6 +47,16 @@ struct At {
     node: NodeId,
 }
 
+/// A call of a function: which, with what, under which model, in which block,
+/// and where a fault in it points.
+type Call = (
+    BindingId,
+    SmallVec<[NodeId; 4]>,
+    ContextId,
+    usize,
+    Option<(u16, Span)>,
+);
+
 /// A block being built.
 struct Builder {
     block: Block,
@@ -55,6 +65,7 @@ struct Builder {
     known: FxHashMap<SmallVec<[u64; 6]>, NodeId>,
     /// What is remembered only as long as this block is built.
     remembered: Vec<(BindingId, ContextId)>,
+    written_out: Vec<Call>,
 }
 
 /// Whose names are seen.
@@ -94,6 +105,8 @@ pub struct Lowering<'c> {
     contexts: Vec<At>,
     memo: FxHashMap<(BindingId, ContextId), At>,
     columns: FxHashMap<(BindingId, usize), u32>,
+    /// Functions written out before, by what they were given.
+    written_out: FxHashMap<Call, NodeId>,
     calls: usize,
     nodes: usize,
     too_large: Option<(u16, Span)>,
@@ -121,6 +134,7 @@ impl<'c> Lowering<'c> {
             contexts: Vec::new(),
             memo: FxHashMap::default(),
             columns: FxHashMap::default(),
+            written_out: FxHashMap::default(),
             calls: 0,
             nodes: 0,
             too_large: None,
@@ -382,6 +396,7 @@ impl Builder {
             captures: Vec::new(),
             known: FxHashMap::default(),
             remembered: Vec::new(),
+            written_out: Vec::new(),
         }
     }
 }

@@ -372,6 +372,10 @@ impl Checker {
         if self.is_duplicate(&definition.name, space) {
             return;
         }
+        let form = self
+            .unifier
+            .gathered_apart(&result.form, takes.iter().map(|typed| &typed.form));
+        let result = Typed { form, ..result };
         let mut generaliser = Generaliser::default();
         let mut bind = |typed: Typed| {
             let form = generaliser.bind(&mut self.unifier, &typed.form, |_| true);

@@ -138,22 +138,35 @@ impl Unifier {
     /// `x`, and a chain of such names more than can be counted.
     #[must_use]
     pub fn gathered(&self, form: &Form) -> Form {
+        self.gather(form, &|sort, _| matches!(sort, Sort::Along(_)))
+    }
+
+    /// The same for the result of a function, all of whose unknowns are
+    /// generalised: what its parameters `take` is tied to them and stays.
+    #[must_use]
+    pub fn gathered_apart<'f>(&self, form: &Form, take: impl Iterator<Item = &'f Form>) -> Form {
+        let tied: Vec<Key> = take
+            .flat_map(|form| self.resolve(form).unknowns().collect::<Vec<_>>())
+            .collect();
+        self.gather(form, &|sort, key| sort != Sort::Any && !tied.contains(&key))
+    }
+
+    fn gather(&self, form: &Form, is_free: &dyn Fn(Sort, Key) -> bool) -> Form {
         let form = self.resolve(form);
         if !form.is_open() {
             return form;
         }
         let free = |key: Key| {
             let local = key >= FIRST_UNKNOWN && self.is_local(key);
-            local
-                .then(|| self.sort(key))
-                .filter(|sort| matches!(sort, Sort::Along(_)))
+            let along = local.then(|| self.sort(key)).filter(|sort| is_free(*sort, key));
+            along.and_then(Sort::along)
         };
-        let mut seen: Vec<Sort> = Vec::new();
+        let mut seen: Vec<Key> = Vec::new();
         let mut surplus: Vec<Key> = Vec::new();
         for key in form.unknowns() {
             match free(key) {
-                Some(sort) if seen.contains(&sort) => surplus.push(key),
-                Some(sort) => seen.push(sort),
+                Some(generator) if seen.contains(&generator) => surplus.push(key),
+                Some(generator) => seen.push(generator),
                 None => {}
             }
         }

@@ -89,6 +89,9 @@ impl Lowering<'_> {
         for key in &builder.remembered {
             self.memo.remove(key);
         }
+        for call in &builder.written_out {
+            self.written_out.remove(call);
+        }
         builder.block.result = result;
         builder.block.inputs = 1 + builder.captures.len() as u32;
         self.program.bodies.push(builder.block);

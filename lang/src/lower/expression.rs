@@ -285,7 +285,17 @@ impl Lowering<'_> {
             });
             self.locals.push((parameter.name.node.clone(), at));
         }
-        let node = self.with_wheres(&function.definition.value, &function.definition.wheres);
+        let given = self.locals[depth..].iter().map(|(_, at)| at.node).collect();
+        let call = (id, given, self.scope.context, self.level, blame);
+        let node = match self.written_out.get(&call) {
+            Some(node) => *node,
+            None => {
+                let node = self.with_wheres(&function.definition.value, &function.definition.wheres);
+                self.builders[self.level].written_out.push(call.clone());
+                self.written_out.insert(call, node);
+                node
+            }
+        };
         self.calls -= 1;
         self.locals.truncate(depth);
         self.scope = outer;
