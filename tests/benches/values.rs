@@ -6,10 +6,9 @@
 //! A run through a session holds the check of the sheet, the range and the sum
 //! as well; `range` measures what those take alone.
 //!
-//! On two cores shared with other work: range 2.4 ms, distances 23 to 29 ms
-//! (23 ns each without the range), the formula 14 ms where the loop by hand
-//! takes 6.4 ms. The goals are 20 ms for the distances, and three times the
-//! loop.
+//! On two cores with nothing else to do: range 2.3 ms, distances 16.4 ms with
+//! their range, the formula 14.4 ms where the loop by hand takes 5.6 ms. The
+//! goals are 20 ms for the distances, and three times the loop.
 
 use criterion::{Criterion, Throughput, criterion_group, criterion_main};
 use std::hint::black_box;
