@@ -150,6 +150,14 @@ impl<'c> Lowering<'c> {
         self.contexts[0].node
     }
 
+    /// The node of a model that stands in a statement.
+    pub fn model_of(&mut self, written: &crate::ast::Model, limit: BindingId, source: u16) -> NodeId {
+        self.within(limit, source, |this| {
+            let context = this.context_of(written);
+            this.contexts[context].node
+        })
+    }
+
     /// The node of an output.
     pub fn output(&mut self, output: &Output, source: u16) -> NodeId {
         match output {

@@ -78,10 +78,14 @@ fn lower_task(lowering: &mut Lowering<'_>, task: &Task) -> Vec<NodeId> {
         Task::Table(table) => lowering.table(table),
         Task::Help(_) => Vec::new(),
         Task::Explain(task) => {
+            let source = task.show.place.source;
             let own = task.values.iter().map(|id| Output::Binding(*id));
             let all = std::iter::once(task.show.output.clone()).chain(own);
-            all.map(|output| lowering.output(&output, task.show.place.source))
-                .collect()
+            let mut nodes: Vec<NodeId> = all.map(|output| lowering.output(&output, source)).collect();
+            if let ast::ExprKind::Under(_, model) = &task.expr.kind {
+                nodes.push(lowering.model_of(model, task.limit, source));
+            }
+            nodes
         }
         Task::Claim(task) => {
             let mut lower =
@@ -164,7 +168,7 @@ pub(super) struct Run<'a> {
     evaluator: Evaluator<'a>,
     faults: Vec<Fault>,
     /// The node of the model assumed.
-    model: NodeId,
+    pub(super) model: NodeId,
     /// Columns that do not fit their table.
     misfits: Vec<(usize, Diagnostic)>,
     /// Claims that disagree, each with the place of its item.
@@ -391,6 +395,14 @@ impl Run<'_> {
             .to_owned()
     }
 
+    /// The model of a node, if it can be built.
+    pub(super) fn model_at(&mut self, node: NodeId) -> Option<Arc<Model>> {
+        match self.evaluator.value(node).ok()? {
+            Value::Model(model) => Some(model),
+            Value::Scalar(_) | Value::Series(_) => None,
+        }
+    }
+
     /// The model assumed, if it can be built.
     pub(super) fn report_of_model(&mut self) -> Option<ModelReport> {
         let assumed = self.checker.environment.assumed.as_ref();
@@ -398,9 +410,7 @@ impl Run<'_> {
         if !used && assumed.is_none() {
             return None;
         }
-        let Value::Model(model) = self.evaluator.value(self.model).ok()? else {
-            return None;
-        };
+        let model = self.model_at(self.model)?;
         let name = match assumed {
             Some(model) => {
                 let text = self.checker.sources[usize::from(model.place.source)].slice(model.place.span);
@@ -419,7 +429,7 @@ impl Run<'_> {
     }
 }
 
-fn parameters(model: &Model) -> Vec<(String, Numbers, String)> {
+pub(super) fn parameters(model: &Model) -> Vec<(String, Numbers, String)> {
     // A function of z is written out in the name of the model.
     let row = |(id, setting): &(usize, Setting)| {
         let parameter = &PARAMETERS[*id];

@@ -2,7 +2,7 @@
 //! in it is and where it comes from, the model and what it leaves out, and the
 //! sources of everything used.
 
-use super::evaluate::Run;
+use super::evaluate::{Run, parameters};
 use crate::ast::{Argument, Expr, ExprKind, Step};
 use crate::check::{BindingId, ExplainTask, Face, Meaning, Space, library};
 use crate::eval::plain_number;
@@ -12,6 +12,7 @@ use crate::report::{Numbers, Shown};
 use crate::source::Span;
 use std::fmt::Write;
 use zij_stdlib::catalogue::{Definition, Entry};
+use zij_stdlib::model::Model;
 use zij_stdlib::prelude;
 
 /// What was met in a calculation, each once, in the order met.
@@ -37,7 +38,7 @@ impl Run<'_> {
         }
         self.describe_functions(task, &mut text, &mut met);
         describe_library(&met, &mut text);
-        self.describe_model(task, &mut text);
+        self.describe_model(task, nodes, &mut text);
         sources(&met, &mut text);
         text
     }
@@ -179,35 +180,52 @@ impl Run<'_> {
         });
     }
 
-    fn describe_model(&mut self, task: &ExplainTask, text: &mut String) {
-        if let ExprKind::Under(_, model) = &task.expr.kind {
-            let written = self.checker.sources[usize::from(task.show.place.source)].slice(model.span);
-            let _ = write!(text, "\n\n  model {}", one_line(written));
-            return;
-        }
-        if !task.needs_model {
-            return;
-        }
-        let Some(model) = self.report_of_model() else {
+    /// The model that the value was computed in, and what it leaves out.
+    fn describe_model(&mut self, task: &ExplainTask, nodes: &[NodeId], text: &mut String) {
+        let (title, node) = match &task.expr.kind {
+            ExprKind::Under(_, model) => {
+                let source = &self.checker.sources[usize::from(task.show.place.source)];
+                (one_line(source.slice(model.span)), nodes.last().copied())
+            }
+            _ if task.needs_model => (self.assumed_title(), Some(self.model)),
+            _ => return,
+        };
+        let _ = write!(text, "\n\n  model {title}");
+        let Some(model) = node.and_then(|node| self.model_at(node)) else {
             return;
         };
-        let how = if model.by_default {
-            ", taken because the sheet assumes none"
-        } else {
-            ""
-        };
-        let _ = write!(text, "\n\n  model {}{how}", model.name);
-        for (name, value, unit) in &model.parameters {
+        for (name, value, unit) in parameters(&model) {
             let shown = Shown {
-                value: value.clone(),
-                unit: unit.clone(),
+                value,
+                unit,
                 ..Shown::default()
             };
             let _ = write!(text, "\n      {name} = {}", value_text(&shown));
         }
-        for note in &model.notes {
+        if is_flat(&model) {
+            text.push_str("\n      flat");
+        }
+        for note in model.notes() {
             let _ = write!(text, "\n      {note}");
         }
+    }
+
+    fn assumed_title(&mut self) -> String {
+        match self.report_of_model() {
+            Some(model) if model.by_default => {
+                format!("{}, taken because the sheet assumes none", model.name)
+            }
+            Some(model) => model.name,
+            None => String::new(),
+        }
+    }
+}
+
+/// Whether the library finds no curvature in a model.
+fn is_flat(model: &Model) -> bool {
+    match library::value("Ωk").map(|entry| entry.definition) {
+        Some(Definition::ModelValue(curvature)) => curvature(model).is_ok_and(|value| value == 0.0),
+        Some(Definition::Constant(..) | Definition::Function(_) | Definition::Cosmology(_)) | None => false,
     }
 }
 
